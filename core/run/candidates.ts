@@ -1,0 +1,22 @@
+/** Which bubbles may be carried apart when they die: free spheres that gas leaves by diffusion only, in a vessel of constant pressure. */
+import { type Network } from '../network/network.ts';
+import { LINK_KERNELS } from '../transfer/register.ts';
+
+/** One entry a node: 1 for a candidate. */
+export function carriedCandidates(network: Network): Uint8Array {
+  const { nodes } = network;
+  const candidate = new Uint8Array(nodes.count);
+  if (network.ambient.wave !== 'constant') return candidate;
+  for (let i = 0; i < nodes.bubbleCount; i++) {
+    candidate[i] = nodes.mouth[i] === 0 && nodes.wallStiffness[i] === 0 ? 1 : 0;
+  }
+  for (const table of network.links) {
+    if (LINK_KERNELS[table.kind].diffusive) continue;
+    for (let l = 0; l < table.count; l++) {
+      candidate[table.from[l]!] = 0;
+      candidate[table.to[l]!] = 0;
+    }
+  }
+  for (const feed of network.feeds) candidate[feed.node] = 0;
+  return candidate;
+}

@@ -1,0 +1,157 @@
+/**
+ * The watches of a network at work: which signed quantities changed sign inside a step, when exactly, and what that means.
+ * Signs are kept by name, so that a network made smaller does not tell again what was told.
+ */
+import { FILM_SIZE } from '../films/film.ts';
+import { BUBBLE } from '../network/network.ts';
+import { faceArea } from '../network/geometry.ts';
+import { WATCHES } from './events/register.ts';
+import type { RunEvent } from './record.ts';
+import type { Watch, WatchContext } from './watch.ts';
+
+export interface Observation {
+  /** True where some watch reads slopes. */
+  readonly needsSlopes: boolean;
+  /**
+   * What holds at time t and was not told: at the start, after valves moved, after the network was remade.
+   * Node states are those of t. Updates `signs` and remembers the values.
+   */
+  opening(t: number, signs: Map<string, boolean>, toldOnce: Set<string>): RunEvent[];
+  /**
+   * Passages inside (from, to], unordered.
+   * @param lookAt puts the node states to an instant of the step
+   * @param passage finds where a quantity of the state of some nodes passes zero between two instants
+   */
+  passages(
+    from: number,
+    to: number,
+    lookAt: (t: number) => boolean,
+    passage: (a: number, b: number, nodes: readonly number[], quantity: (t: number) => number) => number,
+    lookAtNodes: (t: number, nodes: readonly number[]) => boolean,
+    signs: Map<string, boolean>,
+    toldOnce: Set<string>,
+  ): RunEvent[];
+  /** Takes the present node states as the start of the next step. */
+  remember(t: number): void;
+  /** Surfactant that the faces and film liquids of all living bubbles hold by their present state, mol. */
+  surfactantHeld(): number;
+}
+
+const filmOut = new Float64Array(FILM_SIZE);
+
+/** Up to this many watched quantities a step is looked at in its middle too, for what comes and goes inside it. */
+const LOOK_INSIDE = 400;
+
+export function createObservation(context: WatchContext): Observation {
+  const { system, alive } = context;
+  const watches = WATCHES.map((make) => make(context)).filter((watch): watch is Watch => watch !== null);
+  const offsets: number[] = [];
+  let total = 0;
+  for (const watch of watches) {
+    offsets.push(total);
+    total += watch.count;
+  }
+  const before = new Float64Array(total);
+  const middle = new Float64Array(total);
+  const after = new Float64Array(total);
+  const views = (whole: Float64Array): Float64Array[] =>
+    watches.map((watch, w) => whole.subarray(offsets[w]!, offsets[w]! + watch.count));
+  const beforeViews = views(before);
+  const middleViews = views(middle);
+  const afterViews = views(after);
+  const needsSlopes = watches.some((watch) => watch.needsSlopes);
+
+  function evaluateAll(t: number, into: readonly Float64Array[]): void {
+    watches.forEach((watch, w) => watch.evaluate(t, into[w]!));
+  }
+
+  function tell(w: number, k: number, t: number, positive: boolean, first: boolean, toldOnce: Set<string>): RunEvent | null {
+    const watch = watches[w]!;
+    if (watch.once === true) {
+      if (!positive) return null;
+      const key = watch.key(k);
+      if (toldOnce.has(key)) return null;
+      toldOnce.add(key);
+    }
+    const what = watch.tell(k, t, positive, first);
+    return what === null ? null : { time: t, ...what };
+  }
+
+  return {
+    needsSlopes,
+
+    opening(t, signs, toldOnce) {
+      const events: RunEvent[] = [];
+      evaluateAll(t, beforeViews);
+      watches.forEach((watch, w) => {
+        for (const what of watch.standing?.(t, toldOnce) ?? []) events.push({ time: t, ...what });
+        for (let k = 0; k < watch.count; k++) {
+          const value = beforeViews[w]![k]!;
+          const key = watch.key(k);
+          if (Number.isNaN(value)) {
+            signs.delete(key);
+            continue;
+          }
+          const known = signs.get(key);
+          const positive = value >= 0;
+          if (known === positive) continue;
+          signs.set(key, positive);
+          const event = tell(w, k, t, positive, known === undefined, toldOnce);
+          if (event) events.push(event);
+        }
+      });
+      return events;
+    },
+
+    passages(from, to, lookAt, passage, lookAtNodes, signs, toldOnce) {
+      if (total === 0) return [];
+      const found: RunEvent[] = [];
+      if (!lookAt(to)) return [];
+      evaluateAll(to, afterViews);
+      const inside = total <= LOOK_INSIDE && lookAt(0.5 * (from + to));
+      if (inside) evaluateAll(0.5 * (from + to), middleViews);
+      const search = (w: number, k: number, a: number, fa: number, b: number, fb: number): void => {
+        if (Number.isNaN(fa) || Number.isNaN(fb) || fa >= 0 === fb >= 0) return;
+        const watch = watches[w]!;
+        const nodes = watch.touches(k);
+        const time = passage(a, b, nodes, (t) => watch.value(k, t));
+        lookAtNodes(time, nodes);
+        signs.set(watch.key(k), fb >= 0);
+        const event = tell(w, k, time, fb >= 0, false, toldOnce);
+        if (event) found.push(event);
+      };
+      for (let w = 0; w < watches.length; w++) {
+        for (let k = 0; k < watches[w]!.count; k++) {
+          const fa = beforeViews[w]![k]!;
+          const fb = afterViews[w]![k]!;
+          if (inside) {
+            const fm = middleViews[w]![k]!;
+            search(w, k, from, fa, 0.5 * (from + to), fm);
+            search(w, k, 0.5 * (from + to), fm, to, fb);
+          } else {
+            search(w, k, from, fa, to, fb);
+          }
+        }
+      }
+      return found;
+    },
+
+    remember(t) {
+      if (total > 0) evaluateAll(t, beforeViews);
+    },
+
+    surfactantHeld() {
+      const { network, state } = system;
+      const { nodes, films } = network;
+      let held = 0;
+      for (let i = 0; i < nodes.bubbleCount; i++) {
+        if (nodes.kind[i] !== BUBBLE || alive[i] === 0) continue;
+        const area = faceArea(nodes.mouth[i]!, state.size[i]!);
+        const film = films[nodes.film[i]!]!;
+        film.evaluate(nodes.surfactant[i]!, nodes.liquid[i]!, area, state.coverage[i]!, filmOut);
+        held += nodes.faces[i]! * film.held(nodes.surfactant[i]!, nodes.liquid[i]!, area, filmOut);
+      }
+      return held;
+    },
+  };
+}
