@@ -5,7 +5,6 @@
 import { createExplicit } from './explicit.ts';
 import { createExtrapolation } from './extrapolation.ts';
 import type { Companion, OwnedStepper } from './owned-stepper.ts';
-import { rateBound } from './rate-bound.ts';
 import { createRosenbrock } from './rosenbrock.ts';
 import type { System } from './system.ts';
 
@@ -39,7 +38,7 @@ export function chooseMethod(
 ): Method {
   if (asked === 'stiff') return { name: 'stiff', carries };
   if (asked === 'explicit') return { name: carries ? 'structured' : 'explicit', carries };
-  const efoldings = rateBound(system, 0, y) * until;
+  const efoldings = system.rateBound(0, y) * until;
   if (carries) return { name: efoldings <= FEW_EFOLDINGS_APART ? 'structured' : 'stiff', carries };
   return { name: efoldings <= FEW_EFOLDINGS && system.size <= LARGEST_EXTRAPOLATED ? 'explicit' : 'stiff', carries };
 }

@@ -12,7 +12,6 @@ import { suspect, weightsFromScales } from './norm.ts';
 import { Solver } from './odex.js';
 import { LEAST_STEP, STRETCH } from './one-step.ts';
 import type { OwnedStepper } from './owned-stepper.ts';
-import { rateBound } from './rate-bound.ts';
 import type { StepOutcome, StepStatistics, System } from './system.ts';
 
 /** Every line of the extrapolation from the second on is stable to a product of step and rate of 5.02 (on the real axis). */
@@ -52,7 +51,7 @@ export function createExtrapolation(system: System, until: number): OwnedStepper
   function boundNow(): number {
     statistics.jacobians++;
     statistics.rateEvaluations++;
-    return rateBound(system, time, state);
+    return system.rateBound(time, state);
   }
 
   /** The library's own interpolation, at x in units of the step that was tried; it looks its unknown up, hence O(n). */

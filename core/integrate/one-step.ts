@@ -155,7 +155,8 @@ export function createOneStep(system: System, options: StepperOptions, work: Wor
       adjusted = false;
       system.errorScale(work.state, weight);
       work.controlled = weightsFromScales(weight);
-      kernel.prepare(time);
+      // A companion prepares every attempt anew.
+      if (companion === null || proposal === 0) kernel.prepare(time);
       const least = LEAST_STEP * Math.abs(time);
       if (proposal === 0) proposal = firstStep(remaining);
       let wanted = Math.max(proposal, least);

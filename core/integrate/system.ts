@@ -13,8 +13,6 @@ export interface ShiftedMatrix {
   factor(shift: number): boolean;
   /** Replaces `x` by the solution of `(shift I - J) x = right side`, in place. */
   solve(x: Float64Array): void;
-  /** The largest sum of sizes in a column of J, 1/s: no mode is faster than this. */
-  rateBound(): number;
 }
 
 /** A system `dy/dt = f(t, y)` of `size` unknowns. */
@@ -25,6 +23,11 @@ export interface System {
   rates(t: number, y: Float64Array, out: Float64Array): void;
   /** Evaluates the analytic Jacobian at (t, y) into `matrix`, and writes f and its partial derivative with respect to t. */
   linearise(t: number, y: Float64Array, rates: Float64Array, timeDerivative: Float64Array): void;
+  /**
+   * An upper bound on the rate of every mode of the Jacobian at (t, y), 1/s, such as its largest column sum of sizes (Gershgorin).
+   * A bound from above cannot overlook a fast mode, as an iteration from a chosen start can. NaN where the state has no Jacobian.
+   */
+  rateBound(t: number, y: Float64Array): number;
   /** Writes the size of error that is one unit of the norm for each unknown; Infinity for one that is not controlled. */
   errorScale(y: Float64Array, out: Float64Array): void;
 }

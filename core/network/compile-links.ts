@@ -46,16 +46,31 @@ export function compileLinks(
       out[2] = link.length;
       out[3] = link.viscosity ?? NaN;
     }),
-    table('film-area', films.filter((p) => p.link.contact.kind === 'area'), species, ({ link }, out) => {
-      for (let k = 0; k < species; k++) out[k] = permeance(link, k) * link.contact.value;
-    }),
-    table('film-share', films.filter((p) => p.link.contact.kind === 'share'), species, ({ link }, out) => {
-      for (let k = 0; k < species; k++) out[k] = permeance(link, k) * link.contact.value * Math.PI;
-    }),
-    table('liquid-path', paths.filter((p) => !meetsPool(p)), species + 1, ({ link }, out) => {
-      for (let k = 0; k < species; k++) out[k] = diffusivity[k]! * solubility[k]!;
-      out[species] = link.distance!;
-    }),
+    table(
+      'film-area',
+      films.filter((p) => p.link.contact.kind === 'area'),
+      species,
+      ({ link }, out) => {
+        for (let k = 0; k < species; k++) out[k] = permeance(link, k) * link.contact.value;
+      },
+    ),
+    table(
+      'film-share',
+      films.filter((p) => p.link.contact.kind === 'share'),
+      species,
+      ({ link }, out) => {
+        for (let k = 0; k < species; k++) out[k] = permeance(link, k) * link.contact.value * Math.PI;
+      },
+    ),
+    table(
+      'liquid-path',
+      paths.filter((p) => !meetsPool(p)),
+      species + 1,
+      ({ link }, out) => {
+        for (let k = 0; k < species; k++) out[k] = diffusivity[k]! * solubility[k]!;
+        out[species] = link.distance!;
+      },
+    ),
     table('pool-path', paths.filter(meetsPool), species + 1, ({ link }, out) => {
       for (let k = 0; k < species; k++) out[k] = diffusivity[k]! * solubility[k]!;
       out[species] = link.transient ? 1 : 0;

@@ -72,7 +72,8 @@ export function compileScenario(scenario: Scenario): { start: CompiledStart } | 
     if (amounts[i * scenario.species.length]! >= 0 && Number.isFinite(amounts[i * scenario.species.length]!)) continue;
     faults.push({
       path: `nodes[${nodes.origin[i]!}]`,
-      message: 'this bubble has no state to start from: its film or wall pulls it below zero pressure; give it another size, film or wall',
+      message:
+        'this bubble has no state to start from: its film or wall pulls it below zero pressure; give it another size, film or wall',
     });
   }
   if (faults.length > 0) return { faults };
@@ -108,14 +109,21 @@ function sizeOf(size: BubbleSize, mouth: number): number {
   return capHeight(mouth, size.value);
 }
 
-function compileNodes(scenario: Scenario, order: readonly number[], count: number, films: CompiledFilms, sizes: Float64Array): NodeTable {
+function compileNodes(
+  scenario: Scenario,
+  order: readonly number[],
+  count: number,
+  films: CompiledFilms,
+  sizes: Float64Array,
+): NodeTable {
   const species = scenario.species.length;
   const real = (fill: (node: ScenarioNode) => number): Float64Array => {
     const column = new Float64Array(count);
     order.forEach((index, i) => (column[i] = fill(scenario.nodes[index]!)));
     return column;
   };
-  const ofBubble = (fill: (bubble: BubbleNode) => number): Float64Array => real((node) => (node.kind === 'bubble' ? fill(node) : 0));
+  const ofBubble = (fill: (bubble: BubbleNode) => number): Float64Array =>
+    real((node) => (node.kind === 'bubble' ? fill(node) : 0));
   const kind = new Uint8Array(count).fill(OUTSIDE);
   order.forEach((index, i) => (kind[i] = KIND_ORDER[scenario.nodes[index]!.kind]));
   const origin = new Int32Array(count).fill(-1);
@@ -170,7 +178,12 @@ function compileNodes(scenario: Scenario, order: readonly number[], count: numbe
   };
 }
 
-function startingAmounts(scenario: Scenario, order: readonly number[], network: Network, sizes: Float64Array): Float64Array {
+function startingAmounts(
+  scenario: Scenario,
+  order: readonly number[],
+  network: Network,
+  sizes: Float64Array,
+): Float64Array {
   const species = network.species.length;
   const RT = GAS_CONSTANT * network.temperature;
   const ambient = waveformValue(network.ambient, 0);

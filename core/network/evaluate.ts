@@ -14,7 +14,13 @@ import { waveformSlope, waveformValue } from './waveform.ts';
  * @param withSlopes fill stiffness, slopes and drifts too
  * @returns false where a bubble holds no gas or has no balance: the state is outside what the laws allow
  */
-export function evaluateNodes(state: NodeState, t: number, y: Float64Array, side: 1 | -1, withSlopes: boolean): boolean {
+export function evaluateNodes(
+  state: NodeState,
+  t: number,
+  y: Float64Array,
+  side: 1 | -1,
+  withSlopes: boolean,
+): boolean {
   const { network, species, pressure, partial } = state;
   const ambient = waveformValue(network.ambient, t, side);
   const ambientDrift = withSlopes ? waveformSlope(network.ambient, t, side) : 0;
@@ -33,7 +39,8 @@ export function evaluateNodes(state: NodeState, t: number, y: Float64Array, side
       for (let k = 0; k < species; k++) total += partial[i * species + k] = y[i * species + k]! * perMole;
       state.stiffness[i] = perMole;
     } else if (kind === POOL) {
-      for (let k = 0; k < species; k++) total += partial[i * species + k] = y[i * species + k]! / nodes.capacity[i * species + k]!;
+      for (let k = 0; k < species; k++)
+        total += partial[i * species + k] = y[i * species + k]! / nodes.capacity[i * species + k]!;
       state.stiffness[i] = 1 / nodes.capacity[i * species]!;
     } else if (kind === RESERVOIR) {
       total = waveformValue(nodes.drive[i]!, t, side);

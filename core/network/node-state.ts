@@ -90,14 +90,12 @@ export function createNodeState(network: Network): NodeState {
 
 /** Chooses which bubbles are evaluated: those with a nonzero entry in `active` (one per node). */
 export function setActiveBubbles(state: NodeState, active: Uint8Array): void {
-  const { network } = state;
-  let plain = 0;
-  let shaped = 0;
-  for (let i = 0; i < network.nodes.bubbleCount; i++) {
-    if (active[i] === 0) continue;
-    if (isPlainSphere(network, i)) state.spheres[plain++] = i;
-    else state.shaped[shaped++] = i;
-  }
-  state.sphereCount = plain;
-  state.shapedCount = shaped;
+  state.sphereCount = state.shapedCount = 0;
+  for (let i = 0; i < state.network.nodes.bubbleCount; i++) if (active[i] !== 0) activateBubble(state, i);
+}
+
+/** Adds one bubble to those that are evaluated. */
+export function activateBubble(state: NodeState, i: number): void {
+  if (isPlainSphere(state.network, i)) state.spheres[state.sphereCount++] = i;
+  else state.shaped[state.shapedCount++] = i;
 }

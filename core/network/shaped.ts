@@ -80,7 +80,13 @@ function solveSafely(state: NodeState, film: Film, i: number, P: number, nRT: nu
  * @param withSlopes also fills slopes against amounts and time
  * @returns false where an amount is not positive or no size balances it
  */
-export function evaluateShaped(state: NodeState, ambient: number, ambientDrift: number, y: Float64Array, withSlopes: boolean): boolean {
+export function evaluateShaped(
+  state: NodeState,
+  ambient: number,
+  ambientDrift: number,
+  y: Float64Array,
+  withSlopes: boolean,
+): boolean {
   const { shaped, shapedCount, species, size, sizeSlope, lastAmount } = state;
   const { nodes, films } = state.network;
   const RT = GAS_CONSTANT * state.network.temperature;

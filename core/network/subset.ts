@@ -54,7 +54,9 @@ export function subsetNetwork(
     );
     linkBefore.push(before);
     const coefficients = new Float64Array(before.length * links.stride);
-    before.forEach((l, q) => coefficients.set(links.coefficients.subarray(l * links.stride, (l + 1) * links.stride), q * links.stride));
+    before.forEach((l, q) =>
+      coefficients.set(links.coefficients.subarray(l * links.stride, (l + 1) * links.stride), q * links.stride),
+    );
     return {
       ...links,
       count: before.length,
@@ -67,6 +69,8 @@ export function subsetNetwork(
       extent: links.extent.length === 0 ? links.extent : Float64Array.from(before, (l) => links.extent[l]!),
     };
   });
-  const feeds = network.feeds.filter((feed) => place[feed.node]! >= 0).map((feed) => ({ ...feed, node: place[feed.node]! }));
+  const feeds = network.feeds
+    .filter((feed) => place[feed.node]! >= 0)
+    .map((feed) => ({ ...feed, node: place[feed.node]! }));
   return { network: { ...network, nodes: table, links, feeds }, nodeBefore, linkBefore };
 }

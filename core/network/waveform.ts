@@ -45,7 +45,11 @@ export function waveformValue(wave: Waveform, t: number, side: 1 | -1 = 1): numb
     }
     case 'ramp': {
       const x = Math.min(1, Math.max(0, (t - wave.start) / wave.over));
-      return wave.over > 0 ? wave.from + (wave.to - wave.from) * x : t < wave.start || (t === wave.start && side < 0) ? wave.from : wave.to;
+      return wave.over > 0
+        ? wave.from + (wave.to - wave.from) * x
+        : t < wave.start || (t === wave.start && side < 0)
+          ? wave.from
+          : wave.to;
     }
     case 'pulses': {
       const x = nudge(within(t, wave.period, 0), wave.period, wave.width, side);
@@ -82,7 +86,8 @@ export function waveformSlope(wave: Waveform, t: number, side: 1 | -1 = 1): numb
     case 'sine':
       return ((wave.amplitude * TURN) / wave.period) * Math.cos((TURN * t) / wave.period + wave.phase);
     case 'ramp': {
-      const inside = side > 0 ? t >= wave.start && t < wave.start + wave.over : t > wave.start && t <= wave.start + wave.over;
+      const inside =
+        side > 0 ? t >= wave.start && t < wave.start + wave.over : t > wave.start && t <= wave.start + wave.over;
       return inside && wave.over > 0 ? (wave.to - wave.from) / wave.over : 0;
     }
     case 'table': {

@@ -22,7 +22,12 @@ export function buildAdjacency(network: Network): Adjacency {
   for (let i = 0; i < n; i++) start[i + 1]! += start[i]!;
   const fill = start.slice(0, n);
   const total = start[n]!;
-  const adjacency: Adjacency = { start, group: new Int32Array(total), link: new Int32Array(total), other: new Int32Array(total) };
+  const adjacency: Adjacency = {
+    start,
+    group: new Int32Array(total),
+    link: new Int32Array(total),
+    other: new Int32Array(total),
+  };
   network.links.forEach((table, g) => {
     for (let l = 0; l < table.count; l++) {
       for (let end = 0; end < 2; end++) {

@@ -6,13 +6,23 @@
  * this set, handed to the step control, and is moved at the step's end, so that no gas is lost.
  */
 import { waveformValue } from '../network/waveform.ts';
-import type { Companion } from '../integrate2/owned-stepper.ts';
+import type { Companion } from '../integrate/owned-stepper.ts';
 import type { Adjacency } from './adjacency.ts';
-import { createCluster, type Cluster } from './cluster.ts';
-import type { NetworkSystem } from './system.ts';
+import { createCluster } from './cluster.ts';
+import { createClusterList } from './cluster-list.ts';
+import { activateBubble, setActiveBubbles } from '../network/node-state.ts';
+import { addSource, type NetworkSystem } from './system.ts';
 
 /** A bubble is carried once its remaining life is shorter than this many steps. */
 const LIFE_IN_STEPS = 4;
+/**
+ * Misplaced gas is put right at the end of the step. Who receives it lives at least LIFE_IN_STEPS steps, so what it did meanwhile
+ * with gas that was not there is at most about this share of it.
+ */
+const LATE_SHARE = 1 / LIFE_IN_STEPS;
+
+/** Mark of a bubble that has been selected and not yet grouped. */
+const WAITING = -2;
 
 export interface Vanishing {
   readonly node: number;
@@ -31,12 +41,21 @@ export interface Carried extends Companion {
   plan(t: number, y: Float64Array, h: number): void;
   /** Vanishings of the step just done, in time order. */
   losses(): Vanishing[];
+  /**
+   * Gas of the last step that its sources misplaced and that the nodes after the bubbles have still to get (it may be below zero),
+   * mol, (node - bubbles) * species + k. A pool is stiff: it gets it smoothly during the next step, not at a stroke.
+   */
+  readonly inTransit: Float64Array;
+  /** Delivers what is in transit at once: at the end of a run. */
+  deliver(adjust: (unknown: number, delta: number) => void): void;
   /** The step stands: the corrections of the state through `adjust(unknown, delta)`. */
   commit(t: number, y: Float64Array, adjust: (unknown: number, delta: number) => void): void;
   /** The step is cut: the state is taken from `complete`, and the past is forgotten. */
   cutShort(): void;
   /** Turns a dense output of the main system at time t inside the last step into the whole state: carried bubbles, gas on its way. */
   complete(t: number, y: Float64Array): void;
+  /** Writes the amounts of one carried bubble at time t inside the last step into the state y. */
+  completeOne(t: number, node: number, y: Float64Array): void;
 }
 
 /**
@@ -61,12 +80,13 @@ export function createCarried(
   const { nodes } = network;
   const species = state.species;
   const n = nodes.count;
+  const bubbleUnknowns = nodes.bubbleCount * species;
   const active = new Uint8Array(n).fill(1);
-  const members: number[] = [];
-  /** Clusters are used again from step to step; the first `clusterCount` are those of the step at hand. */
-  const pool: Cluster[] = [];
-  let clusterCount = 0;
-  const mark = new Int32Array(n).fill(-1);
+  const cluster = createCluster(system, adjacency, linkOpen, alive, vanishRadius, tolerance);
+  const list = createClusterList(species);
+  const { members } = list;
+  /** The cluster of each node; -1: not carried. */
+  const clusterOf = new Int32Array(n).fill(-1);
   // Node states at the start of the step, one step before, and at its end: what the carried bubbles see of their neighbours.
   const now = { partial: new Float64Array(n * species), radius: new Float64Array(n) };
   const past = { partial: new Float64Array(n * species), radius: new Float64Array(n) };
@@ -74,11 +94,18 @@ export function createCarried(
   let pastStep = 0; // length of the step before, 0 where there is none
   let totalAmount = 0;
   let start = 0;
+  let ambient = 0;
+  const inTransit = new Float64Array(system.size - bubbleUnknowns);
+  let stepLength = 0;
   const scratch = new Float64Array(system.size);
   const misplaced = new Float64Array(system.size); // zero between uses
   const scale = new Float64Array(system.size);
+  const found: number[] = []; // selected, before they are grouped
+  const group: number[] = [];
+  const amounts: number[] = [];
 
-  const surroundings = { now, past, next, pastStep: 0, step: 0 };
+  const ahead = { now, past, next, pastStep: 0, step: 0 }; // the end of the step extrapolated
+  const known = { now, past, next, pastStep: 0, step: 0 }; // and known
 
   function lifetime(i: number, y: Float64Array, rates: Float64Array | null): number {
     if (rates === null) {
@@ -102,6 +129,15 @@ export function createCarried(
     sources.count = 0;
   }
 
+  /** What is in transit becomes a source over [0, h] that begins and ends at nought: 6 delta tau (h - tau)/h^3. */
+  function addTransit(h: number): void {
+    for (let q = 0; q < inTransit.length; q++) {
+      if (inTransit[q] === 0) continue;
+      const c = (6 * inTransit[q]!) / (h * h * h);
+      addSource(system.sources, bubbleUnknowns + q, 0, c * h, -c);
+    }
+  }
+
   function select(t: number, y: Float64Array, h: number): void {
     let rates: Float64Array | null = null;
     if (pastStep === 0) {
@@ -111,40 +147,88 @@ export function createCarried(
       system.setActive(active, linkOpen);
       system.rates(t, y, rates);
     }
-    for (const i of members) mark[i] = -1;
-    members.length = 0;
+    found.length = 0;
     for (let i = 0; i < nodes.bubbleCount; i++) {
       if (candidates[i] === 0 || alive[i] === 0) continue;
-      if (lifetime(i, y, rates) < LIFE_IN_STEPS * h) members.push(i);
+      if (lifetime(i, y, rates) < LIFE_IN_STEPS * h) found.push(i);
     }
   }
 
   /** Those that touch are integrated together. */
-  function gather(): void {
-    clusterCount = 0;
-    for (const i of members) mark[i] = -2;
-    for (const i of members) {
-      if (mark[i] !== -2) continue;
-      const group = [i];
-      mark[i] = clusterCount;
+  function gather(y: Float64Array): void {
+    for (const i of members) clusterOf[i] = -1;
+    list.clear();
+    for (const i of found) clusterOf[i] = WAITING;
+    for (const i of found) {
+      if (clusterOf[i] !== WAITING) continue;
+      group.length = 0;
+      group.push(i);
+      clusterOf[i] = list.count;
       for (let q = 0; q < group.length; q++) {
         const a = group[q]!;
         for (let e = adjacency.start[a]!; e < adjacency.start[a + 1]!; e++) {
           const b = adjacency.other[e]!;
-          if (mark[b] === -2 && linkOpen[adjacency.group[e]!]![adjacency.link[e]!] !== 0) {
-            mark[b] = clusterCount;
+          if (clusterOf[b] === WAITING && linkOpen[adjacency.group[e]!]![adjacency.link[e]!] !== 0) {
+            clusterOf[b] = list.count;
             group.push(b);
           }
         }
       }
-      pool[clusterCount] ??= createCluster(system, adjacency, linkOpen, alive, vanishRadius, tolerance);
-      pool[clusterCount++]!.assign(group);
+      list.add(group, y);
     }
+  }
+
+  /** Cluster c into the worker. */
+  function take(c: number): void {
+    list.readGroup(c, group);
+    cluster.take(group, now.radius, list.startAmount, list.memberStart[c]! * species);
+  }
+
+  /** Whether the neighbours of cluster c went as foreseen, so that its flows did too, to a tenth of the tolerance. */
+  function wentAsForeseen(c: number, h: number): boolean {
+    const share = 0.1 * tolerance;
+    const onward = pastStep === 0 ? 0 : h / pastStep;
+    for (let q = list.memberStart[c]!; q < list.memberStart[c + 1]!; q++) {
+      const i = members[q]!;
+      for (let e = adjacency.start[i]!; e < adjacency.start[i + 1]!; e++) {
+        const j = adjacency.other[e]!;
+        if (clusterOf[j] === c || alive[j] === 0) continue;
+        for (let k = 0; k < species; k++) {
+          const u = j * species + k;
+          const p = now.partial[u]!;
+          const miss = next.partial[u]! - p - (p - past.partial[u]!) * onward;
+          if (!(Math.abs(miss) <= share * Math.abs(now.partial[i * species + k]! - p))) return false;
+        }
+        const R = now.radius[j]!;
+        if (R === Infinity) continue;
+        const miss = next.radius[j]! - R - (R - past.radius[j]!) * onward;
+        // A contact film goes with the square of the radius.
+        if (!(Math.abs(miss) <= 0.5 * share * R)) return false;
+      }
+    }
+    return true;
+  }
+
+  /** Node states of the living carried bubbles at the end of the step, by the same laws as the others'. */
+  function showEnd(t: number, candidate: Float64Array): void {
+    scratch.set(candidate);
+    state.sphereCount = state.shapedCount = 0;
+    for (let q = 0; q < members.length; q++) {
+      const i = members[q]!;
+      if (list.goneAt[q] !== Infinity) {
+        state.radius[i] = 0;
+        continue;
+      }
+      for (let k = 0; k < species; k++) scratch[i * species + k] = list.endAmount[q * species + k]!;
+      activateBubble(state, i);
+    }
+    if (!system.evaluate(t, scratch, withSlopes)) throw new Error('a dying bubble has no state at the end of a step');
   }
 
   return {
     members,
-    isMember: (node) => mark[node]! >= 0,
+    isMember: (node) => clusterOf[node]! >= 0,
+    inTransit,
 
     restart() {
       pastStep = 0;
@@ -159,26 +243,27 @@ export function createCarried(
       now.radius.set(state.radius);
       select(t, y, h);
       totalAmount = 0;
-      for (let i = 0; i < nodes.bubbleCount * species; i++) totalAmount += y[i]!;
-      gather();
-      for (let c = 0; c < clusterCount; c++) pool[c]!.load(y);
+      for (let u = 0; u < bubbleUnknowns; u++) totalAmount += y[u]!;
+      gather(y);
       active.set(alive);
       for (const i of members) active[i] = 0;
       system.setActive(active, linkOpen);
       system.errorScale(y, scale);
       start = t;
+      ambient = waveformValue(network.ambient, t);
     },
 
     begin(t, h) {
-      surroundings.pastStep = pastStep;
-      surroundings.step = 0; // the end of the step is not known yet: extrapolate
+      ahead.pastStep = pastStep;
       const { sources } = system;
       clearSources();
       sources.origin = t;
-      const ambient = waveformValue(network.ambient, t);
-      for (let c = 0; c < clusterCount; c++) {
-        pool[c]!.integrate(t, h, ambient, surroundings);
-        pool[c]!.fit(h, sources);
+      stepLength = h;
+      addTransit(h);
+      for (let c = 0; c < list.count; c++) {
+        take(c);
+        cluster.integrate(t, h, ambient, ahead);
+        list.fit(c, cluster, h, sources);
       }
     },
 
@@ -186,55 +271,97 @@ export function createCarried(
       if (!system.evaluate(t + h, candidate, withSlopes)) return Infinity;
       next.partial.set(state.partial);
       next.radius.set(state.radius);
-      surroundings.step = h;
-      const ambient = waveformValue(network.ambient, t);
-      for (let c = 0; c < clusterCount; c++) {
-        pool[c]!.integrate(t, h, ambient, surroundings);
-        pool[c]!.addMisplaced(misplaced);
+      known.pastStep = pastStep;
+      known.step = h;
+      // Gas misplaced for one step, against what its receiver holds; a pool's receivers are all the bubbles on it. As for the
+      // main system it is the root mean square over the bubbles that counts.
+      let ofBubbles = 0;
+      let ofAll = 0;
+      for (let c = 0; c < list.count; c++) {
+        if (wentAsForeseen(c, h)) continue;
+        take(c);
+        cluster.integrate(t, h, ambient, known);
+        list.correct(c, cluster, misplaced);
       }
-      // Gas misplaced for one step, against what its receiver holds; a pool's receivers are all the bubbles on it.
-      let worst = 0;
-      for (let c = 0; c < clusterCount; c++) {
-        for (const u of pool[c]!.receivers) {
-          const node = Math.floor(u / species);
-          const holds = node < nodes.bubbleCount ? scale[u]! : tolerance * totalAmount;
-          const e = (0.1 * Math.abs(misplaced[u]!)) / holds;
-          if (e > worst) worst = e;
-        }
+      for (let q = 0; q < list.flows; q++) {
+        const u = list.receiver[q]!;
+        if (misplaced[u] === 0) continue;
+        const holds = u < bubbleUnknowns ? scale[u]! : tolerance * totalAmount;
+        const e = (LATE_SHARE * misplaced[u]!) / holds;
+        misplaced[u] = 0;
+        if (u < bubbleUnknowns) ofBubbles += e * e;
+        else ofAll += e * e;
       }
-      for (let c = 0; c < clusterCount; c++) for (const u of pool[c]!.receivers) misplaced[u] = 0;
+      const error = Math.sqrt(ofBubbles / bubbleUnknowns + ofAll);
       // The clusters wrote their neighbours' courses into the node state: put the end of the step back.
       state.partial.set(next.partial);
       state.radius.set(next.radius);
-      for (let c = 0; c < clusterCount; c++) pool[c]!.showEnd();
-      return worst;
+      if (error <= 1) {
+        showEnd(t + h, candidate);
+        setActiveBubbles(state, active);
+      }
+      return error;
     },
 
     losses() {
       const vanished: Vanishing[] = [];
-      for (let c = 0; c < clusterCount; c++) pool[c]!.addLosses(start, vanished);
+      members.forEach((node, q) => {
+        if (list.goneAt[q] === Infinity) return;
+        vanished.push({ node, time: start + list.goneAt[q]!, amount: list.goneAmount[q]! });
+      });
       return vanished.sort((a, b) => a.time - b.time || a.node - b.node);
     },
 
     cutShort() {
       pastStep = 0;
+      inTransit.fill(0);
+    },
+
+    deliver(adjust) {
+      for (let q = 0; q < inTransit.length; q++) if (inTransit[q] !== 0) adjust(bubbleUnknowns + q, inTransit[q]!);
+      inTransit.fill(0);
     },
 
     commit(t, y, adjust) {
       pastStep = t - start;
-      for (let c = 0; c < clusterCount; c++) {
-        const cluster = pool[c]!;
-        cluster.addMisplaced(misplaced);
-        for (const u of cluster.receivers) {
-          if (misplaced[u] !== 0) adjust(u, misplaced[u]!);
-          misplaced[u] = 0;
-        }
-        cluster.finish(y, adjust, dropped);
+      inTransit.fill(0);
+      for (let q = 0; q < list.flows; q++) {
+        const u = list.receiver[q]!;
+        const delta = list.moved[q]! - list.predicted[q]!;
+        if (delta === 0) continue;
+        if (u >= bubbleUnknowns) inTransit[u - bubbleUnknowns]! += delta;
+        else adjust(u, delta);
       }
+      members.forEach((i, q) => {
+        for (let k = 0; k < species; k++)
+          adjust(i * species + k, list.endAmount[q * species + k]! - y[i * species + k]!);
+      });
+      for (let q = 0; q < list.count * species; q++) dropped[q % species]! += list.dropped[q]!;
     },
 
     complete(t, y) {
-      for (let c = 0; c < clusterCount; c++) pool[c]!.complete(t - start, y);
+      const tau = t - start;
+      const x = stepLength > 0 ? tau / stepLength : 1;
+      const under = 1 - x * x * (3 - 2 * x);
+      for (let q = 0; q < inTransit.length; q++) y[bubbleUnknowns + q]! += under * inTransit[q]!;
+      for (let c = 0; c < list.count; c++) {
+        followTo(c, tau);
+        list.complete(c, tau, amounts, y);
+      }
+    },
+
+    completeOne(t, node, y) {
+      const c = clusterOf[node]!;
+      followTo(c, t - start);
+      const m = group.indexOf(node);
+      for (let k = 0; k < species; k++) y[node * species + k] = amounts[m * species + k]!;
     },
   };
+
+  /** The amounts of cluster c's bubbles at tau, into `amounts`: it is integrated again, as it was when its step stood. */
+  function followTo(c: number, tau: number): void {
+    take(c);
+    cluster.integrate(start, stepLength, ambient, list.corrected[c] === 1 ? known : ahead);
+    cluster.amountsAt(tau, amounts);
+  }
 }

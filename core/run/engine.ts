@@ -2,20 +2,21 @@
  * The driver: steps a network from start to end, stands still at everything that happens on the way, and keeps the balance.
  * Observers hear events and frames; what the run did is told by `result`. Pausing (`advance` in slices) changes no number.
  */
-import { chooseMethod, createStepper, type Method } from '../integrate2/choose.ts';
-import type { OwnedStepper } from '../integrate2/owned-stepper.ts';
+import { chooseMethod, createStepper, type Method } from '../integrate/choose.ts';
+import type { OwnedStepper } from '../integrate/owned-stepper.ts';
 import { BUBBLE, type Network } from '../network/network.ts';
-import { isPlainSphere, setActiveBubbles } from '../network/node-state.ts';
+import { activateBubble, setActiveBubbles } from '../network/node-state.ts';
 import { subsetNetwork } from '../network/subset.ts';
+import type { Waveform } from '../network/waveform.ts';
 import { buildAdjacency, type Adjacency } from './adjacency.ts';
 import { createCarried, type Carried } from './carried.ts';
 import { carriedCandidates } from './candidates.ts';
 import { createFrameMaker } from './frames.ts';
 import { createLedger, surfactantOf } from './ledger.ts';
-import { createObservation, type Observation } from './observation.ts';
+import { createMemory, createObservation, type Observation } from './observation.ts';
 import { createPairs, type Pairs } from './pairs.ts';
 import type { EventName, RunEvent, RunObserver, RunResult, RunStop } from './record.ts';
-import { isValveOpen, longestWaveStep, nextValveMove, nextWaveBreak } from './schedule.ts';
+import { isValveOpen, longestWaveStep, movingWaves, nextValveMove, nextWaveBreak } from './schedule.ts';
 import type { RunSettings } from './settings.ts';
 import { createNetworkSystem, type NetworkSystem } from './system.ts';
 import { findPassage } from './locate.ts';
@@ -24,7 +25,10 @@ import { handOver, joinNeighbours } from './vanish.ts';
 /** Below this many candidates each vanishing is a stop of the main system: exact, and cheap enough. */
 const FEWEST_CARRIED = 24;
 /** A network is made smaller once this share of its bubbles has gone. */
-const GONE_SHARE = 0.12;
+const GONE_SHARE = 0.25;
+/** A run is interrupted between steps: a step may not hold more frames than are written in a moment. */
+const MOST_FRAMES_A_STEP = 2000;
+const NOTHING = new Float64Array(0);
 /** A cap lower than this share of its mouth's radius counts as flat: below it the film is drawn into the mouth. */
 const FLATTEST = 1e-3;
 
@@ -65,6 +69,10 @@ interface Build {
   readonly pairs: Pairs;
   readonly carried: Carried | null;
   readonly observation: Observation;
+  /** Waveforms that are not constant. */
+  readonly waves: readonly Waveform[];
+  /** No step is longer, s: a wave is not jumped over, and the run can be interrupted between its frames. */
+  readonly longestStep: number;
   stepper: OwnedStepper;
   bubbles: number;
   gone: number;
@@ -78,8 +86,7 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
   const eventCounts: Partial<Record<EventName, number>> = {};
   const warnings: string[] = [];
   const statistics = { steps: 0, rejected: 0, rateEvaluations: 0 };
-  const toldOnce = new Set<string>();
-  const signs = new Map<string, boolean>();
+  const memory = createMemory();
   const surfactantAtStart = surfactantOf(start.network);
   let surfactantLeft = 0; // of vanished bubbles
   let worstSurfactant = 0;
@@ -94,7 +101,7 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
 
   evaluate(0, build.stepper.state);
   build.pairs.refresh(build.system.state, 0);
-  emitAll(build.observation.opening(0, signs, toldOnce));
+  emitAll(build.observation.opening(0, memory, true));
   takeFrames(0, () => build.stepper.state);
 
   // ------------------------------------------------------------------------------------------------- building
@@ -109,10 +116,13 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
   ): Build {
     const system = createNetworkSystem(network, tolerance, start.pressureSignal);
     system.state.size.set(sizes);
-    system.segmentEnd = nextWaveBreak(network, t);
+    const waves = movingWaves(network);
+    system.segmentEnd = nextWaveBreak(waves, t);
     const alive = Uint8Array.from({ length: network.nodes.count }, (_, i) => (gone !== null && gone[i] === 1 ? 0 : 1));
     const linkAlive = network.links.map((table) =>
-      Uint8Array.from({ length: table.count }, (_, l) => (alive[table.from[l]!] === 0 || alive[table.to[l]!] === 0 ? 0 : 1)),
+      Uint8Array.from({ length: table.count }, (_, l) =>
+        alive[table.from[l]!] === 0 || alive[table.to[l]!] === 0 ? 0 : 1,
+      ),
     );
     const linkOpen = network.links.map((table, g) =>
       Uint8Array.from({ length: table.count }, (_, l) => (linkAlive[g]![l] === 1 && isValveOpen(table, l, t) ? 1 : 0)),
@@ -126,7 +136,17 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     // Once a run carries its dying bubbles apart it goes on to do so: the methods differ in when they look, not in what they find.
     const carries = method === null ? count >= FEWEST_CARRIED : method.carries && count > 0;
     const carried = carries
-      ? createCarried(system, adjacency, alive, linkOpen, candidates, vanishRadius, tolerance, ledger.dropped, observation.needsSlopes)
+      ? createCarried(
+          system,
+          adjacency,
+          alive,
+          linkOpen,
+          candidates,
+          vanishRadius,
+          tolerance,
+          ledger.dropped,
+          observation.needsSlopes,
+        )
       : null;
     method ??= chooseMethod(system, amounts, until, settings.method, carries);
     const stepper = createStepper(method, system, until, carried);
@@ -145,6 +165,8 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
       carried,
       observation,
       stepper,
+      waves,
+      longestStep: Math.min(longestWaveStep(waves), (MOST_FRAMES_A_STEP * until) / Math.max(1, settings.frames)),
       bubbles,
       gone: network.nodes.bubbleCount - bubbles,
     };
@@ -153,9 +175,11 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
   /** The same network made anew: without what has gone, or with links that were joined. */
   function rebuild(network: Network, keepAll: boolean): void {
     countSteps();
-    const { stepper, alive, linkAlive, system } = build;
+    const { stepper, alive, linkAlive, system, carried } = build;
     const t = stepper.time;
     const h = stepper.nextStep;
+    // Only bubbles go: what is in transit to the nodes after them keeps its places.
+    const inTransit = carried?.inTransit ?? NOTHING;
     if (keepAll) {
       const gone = alive.map((a) => (a === 0 ? 1 : 0));
       build = construct(network, stepper.state.slice(), system.state.size.slice(), t, gone, h);
@@ -170,9 +194,12 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
       });
       build = construct(smaller.network, amounts, sizes, t, null, h);
     }
+    if (build.carried) build.carried.inTransit.set(inTransit);
+    else inTransit.forEach((delta, q) => build.stepper.adjust(build.system.size - inTransit.length + q, delta));
     if (!evaluate(t, build.stepper.state)) throw new Error('a network that was made smaller has no state');
     build.pairs.refresh(build.system.state, t);
-    emitAll(build.observation.opening(t, signs, toldOnce));
+    // What is only smaller has no pair that was not there before.
+    emitAll(build.observation.opening(t, memory, keepAll));
   }
 
   function countSteps(): void {
@@ -192,9 +219,14 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
   /** The whole state at time t inside the last step, in `work`; node states follow. */
   function lookAt(t: number): boolean {
     if (t === standing) return true;
-    build.stepper.interpolate(t, work);
-    build.carried?.complete(t, work);
+    const { stepper, carried, system, alive } = build;
+    stepper.interpolate(t, work);
+    if (carried) {
+      carried.complete(t, work);
+      setActiveBubbles(system.state, alive);
+    }
     const found = evaluate(t, work);
+    resumeActive();
     standing = found ? t : NaN;
     return found;
   }
@@ -230,7 +262,7 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     standing = NaN;
     setActiveBubbles(system.state, alive);
     if (!system.evaluate(t, y, true)) throw new Error(`no state at frame time ${t}`);
-    observer.frame(frames!.make(system, alive, linkOpen, pairs, t, y, ledger.gasBalance(y)));
+    observer.frame(frames!.make(system, alive, linkOpen, pairs, t, y, ledger.gasBalance(y, NOTHING)));
   }
 
   // ------------------------------------------------------------------------------------------------- stepping
@@ -242,9 +274,9 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
   function step(): void {
     const { system, stepper, carried } = build;
     const t = stepper.time;
-    const edge = nextWaveBreak(build.network, t);
+    const edge = nextWaveBreak(build.waves, t);
     system.segmentEnd = edge;
-    const limit = Math.min(until, edge, valveMove, t + longestWaveStep(build.network));
+    const limit = Math.min(until, edge, valveMove, t + build.longestStep);
     if (carried) carried.plan(t, stepper.state, Math.min(stepper.nextStep, limit - t));
     const outcome = stepper.step(limit);
     if (outcome.kind === 'stiff') {
@@ -325,8 +357,9 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     let first: Fall | null = null;
     const { state } = system;
     for (let list = 0; list < 2; list++) {
-      const index = list === 0 ? state.spheres.slice(0, state.sphereCount) : state.shaped.slice(0, state.shapedCount);
-      for (const i of index) {
+      const [index, count] = list === 0 ? [state.spheres, state.sphereCount] : [state.shaped, state.shapedCount];
+      for (let q = 0; q < count; q++) {
+        const i = index[q]!;
         if (room(i) > 0) continue;
         const time = passage(t, first ? first.time : end, [i], () => room(i));
         if (first === null || time < first.time) {
@@ -339,7 +372,7 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
 
   /** As `lookAt`, for a few nodes and what they reach into alone: cheap, however large the network. */
   function lookAtNodes(t: number, few: readonly number[]): boolean {
-    const { stepper, system, observation } = build;
+    const { stepper, system, observation, carried } = build;
     const { state } = system;
     standing = NaN;
     const [spheres, shaped] = [state.sphereCount, state.shapedCount];
@@ -347,10 +380,10 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     const firstShaped = state.shaped.slice(0, few.length);
     state.sphereCount = state.shapedCount = 0;
     for (const i of few) {
-      if (i >= build.network.nodes.bubbleCount || isCarried(i)) continue;
-      if (isPlainSphere(build.network, i)) state.spheres[state.sphereCount++] = i;
-      else state.shaped[state.shapedCount++] = i;
-      for (let k = 0; k < species; k++) work[i * species + k] = stepper.interpolateOne(t, i * species + k);
+      if (i >= build.network.nodes.bubbleCount) continue;
+      activateBubble(state, i);
+      if (carried?.isMember(i) === true) carried.completeOne(t, i, work);
+      else for (let k = 0; k < species; k++) work[i * species + k] = stepper.interpolateOne(t, i * species + k);
     }
     for (const i of state.rigid) {
       for (let k = 0; k < species; k++) work[i * species + k] = stepper.interpolateOne(t, i * species + k);
@@ -361,10 +394,6 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     state.sphereCount = spheres;
     state.shapedCount = shaped;
     return found;
-  }
-
-  function isCarried(i: number): boolean {
-    return build.carried?.isMember(i) ?? false;
   }
 
   /** The instant in (a, b] at which a quantity of the state of some nodes passes zero. */
@@ -379,7 +408,7 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     for (const { node, time, amount } of losses) {
       if (time <= stopAt) events.push(vanished(node, time, amount, null));
     }
-    events.push(...build.observation.passages(t, stopAt, lookAt, passage, lookAtNodes, signs, toldOnce));
+    events.push(...build.observation.passages(t, stopAt, lookAt, passage, lookAtNodes, memory));
     events.sort((a, b) => a.time - b.time);
     emitAll(events);
   }
@@ -390,7 +419,16 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
       names.length === 0
         ? 'no neighbour was left to take its gas: it left the network'
         : `its last gas went to ${names.length > 6 ? `${names.slice(0, 6).join(', ')} and ${names.length - 6} more` : names.join(', ')}`;
-    return { time, event: 'bubble-vanished', subject: nameOf(node), partner: '', link: '', value: amount, unit: 'mol', detail };
+    return {
+      time,
+      event: 'bubble-vanished',
+      subject: nameOf(node),
+      partner: '',
+      link: '',
+      value: amount,
+      unit: 'mol',
+      detail,
+    };
   }
 
   function openEnds(node: number): number[] {
@@ -424,7 +462,12 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
   }
 
   /** The step is cut at `at`: the state there is taken, bubbles that ended are handed over, and the stepper begins anew. */
-  function breakOff(at: number, fallen: Fall | null, losses: readonly { node: number; time: number }[], enough: boolean): void {
+  function breakOff(
+    at: number,
+    fallen: Fall | null,
+    losses: readonly { node: number; time: number }[],
+    enough: boolean,
+  ): void {
     const { stepper, carried } = build;
     stepper.interpolate(at, work);
     carried?.complete(at, work);
@@ -464,7 +507,8 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
   function carryOn(enough: boolean): void {
     const { stepper, network } = build;
     const t = stepper.time;
-    if (build.bubbles < 2000 || stepper.statistics.steps % 16 === 0) ledger.gasBalance(stepper.state);
+    if (build.bubbles < 2000 || stepper.statistics.steps % 16 === 0)
+      ledger.gasBalance(stepper.state, build.carried?.inTransit ?? NOTHING);
     if (t >= until || enough) {
       finish({ kind: 'done' });
       return;
@@ -474,8 +518,15 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     }
     if (t >= valveMove) moveValves(t);
     else if (t >= build.system.segmentEnd) build.stepper.invalidate();
+    // A search for an instant leaves what it looked at there: bubbles that were carried too.
+    if (standing !== t) setActiveBubbles(build.system.state, build.alive);
     if (standing !== t && !evaluate(t, build.stepper.state)) {
-      finish({ kind: 'failed', node: '', time: t, sentence: `the run could not go on past ${t} s: the state there has no meaning in the laws` });
+      finish({
+        kind: 'failed',
+        node: '',
+        time: t,
+        sentence: `the run could not go on past ${t} s: the state there has no meaning in the laws`,
+      });
       return;
     }
     build.observation.remember(t);
@@ -507,7 +558,7 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     stepper.restart(t, stepper.state.slice(), 0);
     evaluate(t, stepper.state);
     pairs.refresh(system.state, t);
-    emitAll(build.observation.opening(t, signs, toldOnce));
+    emitAll(build.observation.opening(t, memory, true));
   }
 
   /** The explicit method met stiffness: nothing of the step is kept, and the stiff method goes on from its start. */
@@ -524,7 +575,9 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
       });
       return;
     }
-    warnings.push(`at ${t} s the network turned stiff (it relaxes within ${time} s): the stiff method went on from there`);
+    warnings.push(
+      `at ${t} s the network turned stiff (it relaxes within ${time} s): the stiff method went on from there`,
+    );
     countSteps();
     method = { name: 'stiff', carries: method!.carries };
     build.stepper = createStepper(method, build.system, until, build.carried);
@@ -534,12 +587,13 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
   function finish(how: RunStop): void {
     if (stop !== null) return;
     stop = how;
-    const { stepper, system, alive } = build;
+    const { stepper, system, alive, carried } = build;
     const t = stepper.time;
+    carried?.deliver((unknown, delta) => stepper.adjust(unknown, delta));
     setActiveBubbles(system.state, alive);
     const lastFrame = frames !== null && (nextFrame === 0 || frameTime(nextFrame - 1) < t);
     if (lastFrame && system.evaluate(t, stepper.state, true)) takeFrame(t, stepper.state);
-    ledger.gasBalance(stepper.state);
+    ledger.gasBalance(stepper.state, NOTHING);
     let surfactant = surfactantLeft - surfactantAtStart;
     if (surfactantAtStart > 0 && system.evaluate(t, stepper.state, false)) {
       surfactant += build.observation.surfactantHeld();

@@ -40,7 +40,8 @@ export function createFrameMaker(network: Network): FrameMaker {
     make(system, alive, linkOpen, pairs, t, y, gasBalance) {
       columns.state.fill(VANISHED);
       for (const column of [columns.radius, columns.volume, columns.amount]) column.fill(0);
-      for (const column of [columns.pressure, columns.tension, columns.elasticity, columns.coverage, columns.index]) column.fill(NaN);
+      for (const column of [columns.pressure, columns.tension, columns.elasticity, columns.coverage, columns.index])
+        column.fill(NaN);
       const { state, network: now } = system;
       const species = state.species;
       const sums = [0, 0, 0, 0];
@@ -100,7 +101,13 @@ export interface FrameMaker {
 }
 
 /** Pairs first, then the links that are no pair, with their flow alone. */
-function pairTable(system: NetworkSystem, alive: Uint8Array, linkOpen: readonly Uint8Array[], pairs: Pairs, t: number): PairTable {
+function pairTable(
+  system: NetworkSystem,
+  alive: Uint8Array,
+  linkOpen: readonly Uint8Array[],
+  pairs: Pairs,
+  t: number,
+): PairTable {
   const { network, state, groups } = system;
   const { nodes } = network;
   const link: string[] = [];

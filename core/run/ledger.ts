@@ -4,8 +4,11 @@ import type { Network } from '../network/network.ts';
 export interface Ledger {
   /** Gas that left with a vanished bubble that had no neighbour, mol per species; counted as still there. */
   readonly dropped: Float64Array;
-  /** Relative gas balance of state y, worst species; remembers the worst ever. */
-  gasBalance(y: Float64Array): number;
+  /**
+   * Relative gas balance of state y, worst species; remembers the worst ever.
+   * @param inTransit gas on its way that is in no node, species by species in turn; its length a multiple of their number
+   */
+  gasBalance(y: Float64Array, inTransit: Float64Array): number;
   readonly worst: number;
 }
 
@@ -22,8 +25,9 @@ export function createLedger(species: number, y: Float64Array): Ledger {
   let worst = 0;
   return {
     dropped,
-    gasBalance(state) {
+    gasBalance(state, inTransit) {
       sumSpecies(species, state, now);
+      for (let q = 0; q < inTransit.length; q++) now[q % species]! += inTransit[q]!;
       let error = 0;
       for (let k = 0; k < species; k++) {
         // A species that is absent at the start is measured against all the gas.

@@ -21,184 +21,215 @@ const THINNEST_FILM = 5e-9;
 /** Two spheres count as far apart while their radii add up to less than this share of their distance. */
 const NEAREST_SPHERES = 0.5;
 
-export interface Limit {
-  readonly nodes: readonly number[];
-  readonly subject: string;
-  readonly partner: string;
-  readonly link: string;
+/** One bound that a law is good up to. */
+export interface Bound {
   readonly unit: string;
   /** What is passed, in words. */
   readonly detail: string;
   /** The value at which the law ends; exceeded above it (`below` false) or below it. */
   readonly bound: number;
   readonly below: boolean;
-  /** The value at time t from the present node state. */
-  value(t: number): number;
-  /** False while the thing is gone. */
-  present(): boolean;
 }
 
-/** Signed distance past the limit, relative: positive where it is exceeded. */
-export function excess(limit: Limit, t: number): number {
-  const ratio = limit.value(t) / limit.bound - 1;
-  return limit.below ? -ratio : ratio;
+/** The bounds of one bubble or one link, whose values are measured together. */
+export interface Limits {
+  readonly nodes: readonly number[];
+  /** Index of the link in its group, and the group; null for a bubble. */
+  readonly link: { readonly group: number; readonly index: number } | null;
+  readonly bounds: readonly Bound[];
+  /** Writes the values at time t, one a bound, from the present node state. */
+  measure(t: number, out: Float64Array): void;
 }
 
-/** Every limit of a network. */
-export function networkLimits(system: NetworkSystem, alive: Uint8Array, linkOpen: readonly Uint8Array[]): Limit[] {
-  return [...bubbleLimits(system, alive), ...linkLimits(system, alive, linkOpen)];
+/** Most bounds that one thing has. */
+export const MOST_BOUNDS = 4;
+
+/** Signed distance past a bound, relative: positive where it is exceeded. */
+export function excess(bound: Bound, value: number): number {
+  const ratio = value / bound.bound - 1;
+  return bound.below ? -ratio : ratio;
 }
 
-function bubbleLimits(system: NetworkSystem, alive: Uint8Array): Limit[] {
+/** What a network can exceed. Things that can exceed nothing are not listed: beds have 10^5 bubbles and films. */
+export function networkLimits(system: NetworkSystem): Limits[] {
+  return [...bubbleLimits(system), ...linkLimits(system)];
+}
+
+function bubbleLimits(system: NetworkSystem): Limits[] {
   const { network, state } = system;
   const { nodes, films } = network;
-  const limits: Limit[] = [];
+  const all: Limits[] = [];
   for (let i = 0; i < nodes.bubbleCount; i++) {
-    if (films[nodes.film[i]!]!.constantTension && !(nodes.liquid[i]! > 0)) continue;
-    const subject = network.nodeName(nodes.origin[i]!);
-    const common = { nodes: [i], subject, partner: '', link: '', present: (): boolean => alive[i] !== 0 };
-    if (!films[nodes.film[i]!]!.constantTension) {
-      limits.push({
-        ...common,
+    const film = films[nodes.film[i]!]!;
+    const thins = nodes.liquid[i]! > 0;
+    const bounds: Bound[] = [];
+    if (!film.constantTension) {
+      bounds.push({
         unit: 'N/m',
         detail: 'tension at or below a hundredth of the clean one: a real film buckles or collapses here',
-        bound: 0.01 * films[nodes.film[i]!]!.cleanTension,
+        bound: 0.01 * film.cleanTension,
         below: true,
-        value: () => state.tension[i]!,
       });
     }
-    if (nodes.liquid[i]! > 0) {
-      limits.push({
-        ...common,
+    if (thins) {
+      bounds.push({
         unit: 'm',
         detail: 'film thinner than 5 nm: no liquid layer is left to carry surfactant, and surface forces rule',
         bound: THINNEST_FILM,
         below: true,
-        value: () => (2 * nodes.liquid[i]!) / faceArea(nodes.mouth[i]!, state.size[i]!),
       });
     }
+    if (bounds.length === 0) continue;
+    all.push({
+      nodes: [i],
+      link: null,
+      bounds,
+      measure(_t, out) {
+        let at = 0;
+        if (!film.constantTension) out[at++] = state.tension[i]!;
+        if (thins) out[at] = (2 * nodes.liquid[i]!) / faceArea(nodes.mouth[i]!, state.size[i]!);
+      },
+    });
   }
-  return limits;
+  return all;
 }
 
-function linkLimits(system: NetworkSystem, alive: Uint8Array, linkOpen: readonly Uint8Array[]): Limit[] {
-  const { network, state, groups } = system;
-  const { nodes } = network;
-  const species = network.species.length;
-  const RT = GAS_CONSTANT * network.temperature;
-  const limits: Limit[] = [];
-  groups.forEach(({ group, kernel }, g) => {
+function linkLimits(system: NetworkSystem): Limits[] {
+  const all: Limits[] = [];
+  system.groups.forEach(({ group }, g) => {
     const { table } = group;
-    const flows = new Float64Array(species);
     for (let l = 0; l < table.count; l++) {
-      const i = table.from[l]!;
-      const j = table.to[l]!;
-      const common = {
-        nodes: [i, j],
-        subject: network.nodeName(nodes.origin[i]!),
-        partner: network.nodeName(nodes.origin[j]!),
-        link: network.linkName(table.origin[l]!),
-        below: false,
-        present: (): boolean => linkOpen[g]![l] !== 0 && alive[i] !== 0 && alive[j] !== 0,
-      };
-      const smaller = (): number => Math.min(state.radius[i]!, state.radius[j]!);
-      switch (table.kind) {
-        case 'tube': {
-          const a = table.coefficients[l * table.stride + TUBE.radius]!;
-          const length = table.coefficients[l * table.stride + TUBE.length]!;
-          const gas = { massFlow: 0, viscosity: 0, molarMass: 0, pressure: 0, flow: 0 };
-          const look = (t: number): typeof gas => {
-            kernel.flow(group, l, state, t, flows);
-            gas.flow = flows.reduce((sum, q) => sum + q, 0);
-            gas.massFlow = flows.reduce((sum, q, k) => sum + Math.abs(q) * network.molarMass[k]!, 0);
-            const up = gas.flow >= 0 ? i : j;
-            gas.pressure = Math.min(state.pressure[i]!, state.pressure[j]!);
-            const x = Float64Array.from({ length: species }, (_, k) => state.partial[up * species + k]! / state.pressure[up]!);
-            gas.viscosity = tubeViscosity(network, table, l, x);
-            gas.molarMass = x.reduce((sum, share, k) => sum + share * network.molarMass[k]!, 0);
-            return gas;
-          };
-          const reynolds = (t: number): number => (2 * look(t).massFlow) / (Math.PI * a * gas.viscosity);
-          limits.push(
-            {
-              ...common,
-              unit: '1',
-              detail: 'Reynolds number above 2300: the flow is no longer laminar, and Hagen-Poiseuille overstates it',
-              bound: REYNOLDS,
-              value: reynolds,
-            },
-            {
-              ...common,
-              unit: 'm',
-              detail: 'entrance length longer than the tube: the flow never becomes Poiseuille flow, and is overstated',
-              bound: length,
-              value: (t) => ENTRANCE * reynolds(t) * 2 * a,
-            },
-            {
-              ...common,
-              unit: '1',
-              detail: 'Knudsen number above 0.01: the gas slips at the wall, and the flow is understated',
-              bound: KNUDSEN,
-              value: (t) => {
-                const { viscosity, pressure, molarMass } = look(t);
-                // Mean free path of a gas from its viscosity: lambda = (mu/p) sqrt(pi R T/(2 M)).
-                return ((viscosity / pressure) * Math.sqrt((Math.PI * RT) / (2 * molarMass))) / (2 * a);
-              },
-            },
-            {
-              ...common,
-              unit: '1',
-              detail: "Mach number above 0.3: the gas's inertia matters, and the flow is overstated",
-              bound: MACH,
-              value: (t) => {
-                const { flow, pressure, molarMass } = look(t);
-                return ((Math.abs(flow) * RT) / (pressure * Math.PI * a * a)) / Math.sqrt(RT / molarMass);
-              },
-            },
-          );
-          break;
-        }
-        case 'film-area':
-        case 'film-share': {
-          // What cannot change during a run is listed only where it is exceeded: networks have 10^5 contact films.
-          const thickness = table.thickness[l]!;
-          if (thickness < THINNEST_FILM) {
-            limits.push({
-              ...common,
-              unit: 'm',
-              detail: 'film thinner than 5 nm: no liquid layer is left to dissolve in',
-              bound: THINNEST_FILM,
-              below: true,
-              value: () => thickness,
-            });
-          }
-          if (nodes.kind[i] !== BUBBLE || nodes.kind[j] !== BUBBLE) break;
-          const extent = table.extent[l]!;
-          if (table.kind === 'film-share' && !(extent > 1)) break;
-          limits.push({
-            ...common,
-            unit: '1',
-            detail: 'contact film wider than the smaller bubble: spheres with a flat contact no longer describe it',
-            bound: 1,
-            value: () => (table.kind === 'film-area' ? Math.sqrt(extent / Math.PI) / smaller() : Math.sqrt(extent)),
-          });
-          break;
-        }
-        case 'liquid-path': {
-          const distance = table.coefficients[l * table.stride + species]!;
-          limits.push({
-            ...common,
-            unit: '1',
-            detail: 'the two bubbles are too near one another for the shape factor of distant spheres',
-            bound: NEAREST_SPHERES,
-            value: () => (state.radius[i]! + state.radius[j]!) / distance,
-          });
-          break;
-        }
-        case 'pool-path':
-          break;
-      }
+      const limits = limitsOf(system, g, l, table.from[l]!, table.to[l]!);
+      if (limits !== null) all.push(limits);
     }
   });
-  return limits;
+  return all;
+}
+
+function limitsOf(system: NetworkSystem, g: number, l: number, i: number, j: number): Limits | null {
+  const { network, state, groups } = system;
+  const { nodes } = network;
+  const { table } = groups[g]!.group;
+  const common = { nodes: [i, j], link: { group: g, index: l } };
+  switch (table.kind) {
+    case 'tube':
+      return { ...common, ...tubeLimits(system, g, l) };
+    case 'film-area':
+    case 'film-share': {
+      // What cannot change during a run is listed only where it is exceeded.
+      const thickness = table.thickness[l]!;
+      const extent = table.extent[l]!;
+      const shares = table.kind === 'film-share';
+      const tooThin = thickness < THINNEST_FILM;
+      const mayBeWide = nodes.kind[i] === BUBBLE && nodes.kind[j] === BUBBLE && (!shares || extent > 1);
+      const bounds: Bound[] = [];
+      if (tooThin) {
+        bounds.push({
+          unit: 'm',
+          detail: 'film thinner than 5 nm: no liquid layer is left to dissolve in',
+          bound: THINNEST_FILM,
+          below: true,
+        });
+      }
+      if (mayBeWide) {
+        bounds.push({
+          unit: '1',
+          detail: 'contact film wider than the smaller bubble: spheres with a flat contact no longer describe it',
+          bound: 1,
+          below: false,
+        });
+      }
+      if (bounds.length === 0) return null;
+      return {
+        ...common,
+        bounds,
+        measure(_t, out) {
+          let at = 0;
+          if (tooThin) out[at++] = thickness;
+          if (!mayBeWide) return;
+          const smaller = Math.min(state.radius[i]!, state.radius[j]!);
+          out[at] = shares ? Math.sqrt(extent) : Math.sqrt(extent / Math.PI) / smaller;
+        },
+      };
+    }
+    case 'liquid-path': {
+      const distance = table.coefficients[l * table.stride + network.species.length]!;
+      const detail = 'the two bubbles are too near one another for the shape factor of distant spheres';
+      return {
+        ...common,
+        bounds: [{ unit: '1', detail, bound: NEAREST_SPHERES, below: false }],
+        measure(_t, out) {
+          out[0] = (state.radius[i]! + state.radius[j]!) / distance;
+        },
+      };
+    }
+    case 'pool-path':
+      return null;
+  }
+}
+
+function tubeLimits(system: NetworkSystem, g: number, l: number): Pick<Limits, 'bounds' | 'measure'> {
+  const { network, state, groups } = system;
+  const { group, kernel } = groups[g]!;
+  const { table } = group;
+  const species = network.species.length;
+  const RT = GAS_CONSTANT * network.temperature;
+  const a = table.coefficients[l * table.stride + TUBE.radius]!;
+  const length = table.coefficients[l * table.stride + TUBE.length]!;
+  const i = table.from[l]!;
+  const j = table.to[l]!;
+  const flows = new Float64Array(species);
+  const share = new Float64Array(species);
+  const bounds: Bound[] = [
+    {
+      unit: '1',
+      detail: 'Reynolds number above 2300: the flow is no longer laminar, and Hagen-Poiseuille overstates it',
+      bound: REYNOLDS,
+      below: false,
+    },
+    {
+      unit: 'm',
+      detail: 'entrance length longer than the tube: the flow never becomes Poiseuille flow, and is overstated',
+      bound: length,
+      below: false,
+    },
+    {
+      unit: '1',
+      detail: 'Knudsen number above 0.01: the gas slips at the wall, and the flow is understated',
+      bound: KNUDSEN,
+      below: false,
+    },
+    {
+      unit: '1',
+      detail: "Mach number above 0.3: the gas's inertia matters, and the flow is overstated",
+      bound: MACH,
+      below: false,
+    },
+  ];
+  return {
+    bounds,
+    measure(t, out) {
+      kernel.flow(group, l, state, t, flows);
+      let flow = 0;
+      let massFlow = 0;
+      for (let k = 0; k < species; k++) {
+        flow += flows[k]!;
+        massFlow += Math.abs(flows[k]!) * network.molarMass[k]!;
+      }
+      const up = flow >= 0 ? i : j;
+      let molarMass = 0;
+      for (let k = 0; k < species; k++) {
+        share[k] = state.partial[up * species + k]! / state.pressure[up]!;
+        molarMass += share[k]! * network.molarMass[k]!;
+      }
+      const viscosity = tubeViscosity(network, table, l, share);
+      const pressure = Math.min(state.pressure[i]!, state.pressure[j]!);
+      const reynolds = (2 * massFlow) / (Math.PI * a * viscosity);
+      out[0] = reynolds;
+      out[1] = ENTRANCE * reynolds * 2 * a;
+      // Mean free path of a gas from its viscosity: lambda = (mu/p) sqrt(pi R T/(2 M)).
+      out[2] = ((viscosity / pressure) * Math.sqrt((Math.PI * RT) / (2 * molarMass))) / (2 * a);
+      out[3] = (Math.abs(flow) * RT) / (pressure * Math.PI * a * a) / Math.sqrt(RT / molarMass);
+    },
+  };
 }

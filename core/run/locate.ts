@@ -6,7 +6,14 @@
  * @param precision length of the bracket at which to stop, s
  * @returns the end of the last bracket on b's side, where the sign is that of fb
  */
-export function findPassage(value: (t: number) => number, a: number, fa: number, b: number, fb: number, precision: number): number {
+export function findPassage(
+  value: (t: number) => number,
+  a: number,
+  fa: number,
+  b: number,
+  fb: number,
+  precision: number,
+): number {
   let [low, high, fl, fh] = [a, b, fa, fb];
   let side = 0;
   for (let pass = 0; pass < 100 && high - low > precision; pass++) {

@@ -23,7 +23,12 @@ export interface NetworkModes {
 const LARGEST_MATRIX = 400;
 
 /** From the present node state, slopes included. */
-export function networkModes(system: NetworkSystem, alive: Uint8Array, linkOpen: readonly Uint8Array[], t: number): NetworkModes {
+export function networkModes(
+  system: NetworkSystem,
+  alive: Uint8Array,
+  linkOpen: readonly Uint8Array[],
+  t: number,
+): NetworkModes {
   const { network, state, groups } = system;
   const { nodes } = network;
   const species = network.species.length;
@@ -31,7 +36,9 @@ export function networkModes(system: NetworkSystem, alive: Uint8Array, linkOpen:
   const to: number[] = [];
   const conductance: number[] = [];
   const bySpecies = new Float64Array(species);
-  let diffusive = false;
+  const diffusive = groups.some(
+    ({ group, kernel }, g) => kernel.diffusive && linkOpen[g]!.subarray(0, group.table.count).includes(1),
+  );
   groups.forEach(({ group, kernel }, g) => {
     const { table } = group;
     for (let l = 0; l < table.count; l++) {
@@ -42,14 +49,15 @@ export function networkModes(system: NetworkSystem, alive: Uint8Array, linkOpen:
       from.push(i);
       to.push(j);
       conductance.push(kernel.diffusive ? mixed(bySpecies, i, j) : bySpecies[0]!);
-      diffusive ||= kernel.diffusive;
     }
   });
   const named = Uint8Array.from(nodes.kind, (kind, i) => (kind === BUBBLE && alive[i] !== 0 ? 1 : 0));
   const signs = { named, pressure: state.pressure };
 
   if (species > 1 && diffusive) {
-    const living = Array.from({ length: nodes.count }, (_, i) => i).filter((i) => alive[i] !== 0 && nodes.kind[i] !== RESERVOIR && nodes.kind[i]! <= POOL);
+    const living = Array.from({ length: nodes.count }, (_, i) => i).filter(
+      (i) => alive[i] !== 0 && nodes.kind[i] !== RESERVOIR && nodes.kind[i]! <= POOL,
+    );
     if (living.length * species <= LARGEST_MATRIX) return modesOfMatrix(living);
   }
   const u = Float64Array.from(state.stiffness);
@@ -74,7 +82,8 @@ export function networkModes(system: NetworkSystem, alive: Uint8Array, linkOpen:
     },
     signs,
   );
-  const caveat = species > 1 && diffusive ? 'counted for the whole gas: a trapped species may hold what this calls growing' : '';
+  const caveat =
+    species > 1 && diffusive ? 'counted for the whole gas: a trapped species may hold what this calls growing' : '';
   return { count: modes.count, fastestRate: modes.fastestRate, feeds: modes.feeds, starves: modes.starves, caveat };
 
   /** Conductance for the whole gas of a diffusive link: species by their shares in the two nodes. */
@@ -82,7 +91,8 @@ export function networkModes(system: NetworkSystem, alive: Uint8Array, linkOpen:
     if (species === 1) return g[0]!;
     let sum = 0;
     const p = state.pressure[i]! + state.pressure[j]!;
-    for (let k = 0; k < species; k++) sum += (g[k]! * (state.partial[i * species + k]! + state.partial[j * species + k]!)) / p;
+    for (let k = 0; k < species; k++)
+      sum += (g[k]! * (state.partial[i * species + k]! + state.partial[j * species + k]!)) / p;
     return sum;
   }
 

@@ -9,14 +9,25 @@ import { WATCHES } from './events/register.ts';
 import type { RunEvent } from './record.ts';
 import type { Watch, WatchContext } from './watch.ts';
 
+/** What was seen and told so far, by watch and key: it outlives the watches, which are remade with the network. */
+export interface Memory {
+  readonly signs: readonly Map<number, boolean>[];
+  readonly told: readonly Set<number>[];
+}
+
+export function createMemory(): Memory {
+  return { signs: WATCHES.map(() => new Map<number, boolean>()), told: WATCHES.map(() => new Set<number>()) };
+}
+
 export interface Observation {
   /** True where some watch reads slopes. */
   readonly needsSlopes: boolean;
   /**
    * What holds at time t and was not told: at the start, after valves moved, after the network was remade.
-   * Node states are those of t. Updates `signs` and remembers the values.
+   * Node states are those of t. Updates the memory and remembers the values.
+   * @param fresh false where nothing can be standing that was not before
    */
-  opening(t: number, signs: Map<string, boolean>, toldOnce: Set<string>): RunEvent[];
+  opening(t: number, memory: Memory, fresh: boolean): RunEvent[];
   /**
    * Passages inside (from, to], unordered.
    * @param lookAt puts the node states to an instant of the step
@@ -28,8 +39,7 @@ export interface Observation {
     lookAt: (t: number) => boolean,
     passage: (a: number, b: number, nodes: readonly number[], quantity: (t: number) => number) => number,
     lookAtNodes: (t: number, nodes: readonly number[]) => boolean,
-    signs: Map<string, boolean>,
-    toldOnce: Set<string>,
+    memory: Memory,
   ): RunEvent[];
   /** Takes the present node states as the start of the next step. */
   remember(t: number): void;
@@ -44,7 +54,15 @@ const LOOK_INSIDE = 400;
 
 export function createObservation(context: WatchContext): Observation {
   const { system, alive } = context;
-  const watches = WATCHES.map((make) => make(context)).filter((watch): watch is Watch => watch !== null);
+  const watches: Watch[] = [];
+  /** The place of each watch in the register. */
+  const kinds: number[] = [];
+  WATCHES.forEach((make, kind) => {
+    const watch = make(context);
+    if (watch === null) return;
+    watches.push(watch);
+    kinds.push(kind);
+  });
   const offsets: number[] = [];
   let total = 0;
   for (const watch of watches) {
@@ -55,7 +73,7 @@ export function createObservation(context: WatchContext): Observation {
   const middle = new Float64Array(total);
   const after = new Float64Array(total);
   const views = (whole: Float64Array): Float64Array[] =>
-    watches.map((watch, w) => whole.subarray(offsets[w]!, offsets[w]! + watch.count));
+    watches.map((watch, w) => whole.subarray(offsets[w], offsets[w]! + watch.count));
   const beforeViews = views(before);
   const middleViews = views(middle);
   const afterViews = views(after);
@@ -65,13 +83,14 @@ export function createObservation(context: WatchContext): Observation {
     watches.forEach((watch, w) => watch.evaluate(t, into[w]!));
   }
 
-  function tell(w: number, k: number, t: number, positive: boolean, first: boolean, toldOnce: Set<string>): RunEvent | null {
+  function tell(w: number, k: number, t: number, positive: boolean, first: boolean, memory: Memory): RunEvent | null {
     const watch = watches[w]!;
     if (watch.once === true) {
       if (!positive) return null;
       const key = watch.key(k);
-      if (toldOnce.has(key)) return null;
-      toldOnce.add(key);
+      const told = memory.told[kinds[w]!]!;
+      if (told.has(key)) return null;
+      told.add(key);
     }
     const what = watch.tell(k, t, positive, first);
     return what === null ? null : { time: t, ...what };
@@ -80,11 +99,14 @@ export function createObservation(context: WatchContext): Observation {
   return {
     needsSlopes,
 
-    opening(t, signs, toldOnce) {
+    opening(t, memory, fresh) {
       const events: RunEvent[] = [];
       evaluateAll(t, beforeViews);
       watches.forEach((watch, w) => {
-        for (const what of watch.standing?.(t, toldOnce) ?? []) events.push({ time: t, ...what });
+        const signs = memory.signs[kinds[w]!]!;
+        if (fresh) {
+          for (const what of watch.standing?.(t, memory.told[kinds[w]!]!) ?? []) events.push({ time: t, ...what });
+        }
         for (let k = 0; k < watch.count; k++) {
           const value = beforeViews[w]![k]!;
           const key = watch.key(k);
@@ -96,14 +118,14 @@ export function createObservation(context: WatchContext): Observation {
           const positive = value >= 0;
           if (known === positive) continue;
           signs.set(key, positive);
-          const event = tell(w, k, t, positive, known === undefined, toldOnce);
+          const event = tell(w, k, t, positive, known === undefined, memory);
           if (event) events.push(event);
         }
       });
       return events;
     },
 
-    passages(from, to, lookAt, passage, lookAtNodes, signs, toldOnce) {
+    passages(from, to, lookAt, passage, lookAtNodes, memory) {
       if (total === 0) return [];
       const found: RunEvent[] = [];
       if (!lookAt(to)) return [];
@@ -116,8 +138,8 @@ export function createObservation(context: WatchContext): Observation {
         const nodes = watch.touches(k);
         const time = passage(a, b, nodes, (t) => watch.value(k, t));
         lookAtNodes(time, nodes);
-        signs.set(watch.key(k), fb >= 0);
-        const event = tell(w, k, time, fb >= 0, false, toldOnce);
+        memory.signs[kinds[w]!]!.set(watch.key(k), fb >= 0);
+        const event = tell(w, k, time, fb >= 0, false, memory);
         if (event) found.push(event);
       };
       for (let w = 0; w < watches.length; w++) {

@@ -18,6 +18,8 @@ export interface Pairs {
   isPair(i: number, j: number): boolean;
   from(k: number): number;
   to(k: number): number;
+  /** A number of the pair's own that outlives a network made smaller. */
+  key(k: number): number;
   ends(k: number): readonly [string, string];
   linkName(k: number): string;
   /** True while both ends live and gas can pass. */
@@ -32,13 +34,6 @@ export interface Pairs {
   flow(k: number, state: NodeState, t: number): number;
   /** Finds the ways through cavities anew from the present node state, after valves or bubbles changed. */
   refresh(state: NodeState, t: number): void;
-}
-
-interface Direct {
-  readonly i: number;
-  readonly j: number;
-  readonly group: number;
-  readonly link: number;
 }
 
 interface Via {
@@ -56,16 +51,22 @@ export function createPairs(system: NetworkSystem, linkOpen: readonly Uint8Array
   const { nodes } = network;
   const species = network.species.length;
   const RT = GAS_CONSTANT * network.temperature;
-  const direct: Direct[] = [];
   // A bubble and a cavity are not a pair to judge by: a small cavity is stiff, whatever the bubbles on it do to each other.
   const isPair = (i: number, j: number): boolean =>
     (nodes.kind[i] === BUBBLE && nodes.kind[j] !== CAVITY) || (nodes.kind[j] === BUBBLE && nodes.kind[i] !== CAVITY);
+  // Links that make a pair by themselves, as flat lists: beds have 10^5 of them.
+  const found: number[] = [];
   groups.forEach(({ group }, g) => {
     const { from, to, count } = group.table;
-    for (let l = 0; l < count; l++) {
-      if (isPair(from[l]!, to[l]!)) direct.push({ i: from[l]!, j: to[l]!, group: g, link: l });
-    }
+    for (let l = 0; l < count; l++) if (isPair(from[l]!, to[l]!)) found.push(g, l);
   });
+  const direct = found.length / 2;
+  const groupAt = Int32Array.from({ length: direct }, (_, k) => found[2 * k]!);
+  const linkAt = Int32Array.from({ length: direct }, (_, k) => found[2 * k + 1]!);
+  const fromOf = (k: number): number =>
+    k < direct ? groups[groupAt[k]!]!.group.table.from[linkAt[k]!]! : through[k - direct]!.i;
+  const toOf = (k: number): number =>
+    k < direct ? groups[groupAt[k]!]!.group.table.to[linkAt[k]!]! : through[k - direct]!.j;
   const through = viaCavities(network);
   const flows = new Float64Array(species);
   const conductances = new Float64Array(species);
@@ -78,10 +79,6 @@ export function createPairs(system: NetworkSystem, linkOpen: readonly Uint8Array
 
   const name = (i: number): string => network.nodeName(nodes.origin[i]!);
 
-  function pairAt(k: number): { i: number; j: number } {
-    return k < direct.length ? direct[k]! : through[k - direct.length]!;
-  }
-
   /** u of one end for the mobile gas, and d, the size of its capillary destabilising part, into `side`. */
   function lookAt(i: number, state: NodeState, anyFrozen: boolean): void {
     if (nodes.kind[i] !== BUBBLE) {
@@ -89,7 +86,8 @@ export function createPairs(system: NetworkSystem, linkOpen: readonly Uint8Array
       side[1] = 0;
       if (nodes.kind[i] === POOL && species > 1) {
         let capacity = 0;
-        for (let k = 0; k < species; k++) if (!anyFrozen || frozen[k] === 0) capacity += nodes.capacity[i * species + k]!;
+        for (let k = 0; k < species; k++)
+          if (!anyFrozen || frozen[k] === 0) capacity += nodes.capacity[i * species + k]!;
         side[0] = 1 / capacity;
       }
       return;
@@ -126,79 +124,93 @@ export function createPairs(system: NetworkSystem, linkOpen: readonly Uint8Array
   }
 
   /** Which species are frozen on a diffusive link: own exchange time, with both ends' capacities in series, beyond the run. */
-  function freeze(pair: Direct, state: NodeState, t: number): boolean {
-    if (species === 1 || !kernelOf(pair.group).diffusive) return false;
-    kernelOf(pair.group).conductance(groupOf(pair.group), pair.link, state, t, conductances);
+  function freeze(k: number, state: NodeState, t: number): boolean {
+    const group = groupAt[k]!;
+    const ends = [fromOf(k), toOf(k)];
+    if (species === 1 || !kernelOf(group).diffusive) return false;
+    kernelOf(group).conductance(groupOf(group), linkAt[k]!, state, t, conductances);
     let still = 0;
-    for (let k = 0; k < species; k++) {
+    for (let s = 0; s < species; s++) {
       let inverse = 0;
-      for (const i of [pair.i, pair.j]) {
+      for (const i of ends) {
         if (nodes.kind[i] === BUBBLE) inverse += 1 / bubbleVolume(nodes.mouth[i]!, state.size[i]!);
       }
-      frozen[k] = 1 / (RT * conductances[k]! * inverse) > runLength ? 1 : 0;
-      still += frozen[k]!;
+      frozen[s] = 1 / (RT * conductances[s]! * inverse) > runLength ? 1 : 0;
+      still += frozen[s]!;
     }
     // Where nothing can move within the run, the whole gas speaks: the margin then tells of a longer one.
     return still > 0 && still < species;
   }
 
   return {
-    count: direct.length + through.length,
+    count: direct + through.length,
     isPair,
-    from: (k) => pairAt(k).i,
-    to: (k) => pairAt(k).j,
+    from: fromOf,
+    to: toOf,
+    // Via cavities: negative, and so apart from the links' own numbers.
+    key: (k) =>
+      k < direct
+        ? groupOf(groupAt[k]!).table.origin[linkAt[k]!]!
+        : -1 - nodes.origin[fromOf(k)]! * 2 ** 26 - nodes.origin[toOf(k)]!,
     ends(k) {
-      const { i, j } = pairAt(k);
-      return [name(i), name(j)];
+      return [name(fromOf(k)), name(toOf(k))];
     },
     linkName(k) {
-      if (k >= direct.length) return through[k - direct.length]!.name;
-      const { group, link } = direct[k]!;
+      if (k >= direct) return through[k - direct]!.name;
+      const group = groupAt[k]!;
+      const link = linkAt[k]!;
       return network.linkName(groupOf(group).table.origin[link]!);
     },
     isOpen(k, alive) {
-      const { i, j } = pairAt(k);
+      const i = fromOf(k);
+      const j = toOf(k);
       if (alive[i] === 0 || alive[j] === 0) return false;
-      if (k >= direct.length) return through[k - direct.length]!.conductance > 0;
-      return linkOpen[direct[k]!.group]![direct[k]!.link] !== 0;
+      if (k >= direct) return through[k - direct]!.conductance > 0;
+      return linkOpen[groupAt[k]!]![linkAt[k]!] !== 0;
     },
     alwaysUnstable(k) {
-      const { i, j } = pairAt(k);
+      const i = fromOf(k);
+      const j = toOf(k);
       const hopeless = (n: number): boolean => nodes.kind[n] !== BUBBLE || isPlainSphere(network, n);
       return species === 1 && nodes.kind[i] !== POOL && nodes.kind[j] !== POOL && hopeless(i) && hopeless(j);
     },
     margin(k, state, t) {
-      const pair = pairAt(k);
-      const anyFrozen = k < direct.length && freeze(direct[k]!, state, t);
-      lookAt(pair.i, state, anyFrozen);
+      const i = fromOf(k);
+      const j = toOf(k);
+      const anyFrozen = k < direct && freeze(k, state, t);
+      lookAt(i, state, anyFrozen);
       const ui = side[0]!;
       const di = side[1]!;
-      lookAt(pair.j, state, anyFrozen);
+      lookAt(j, state, anyFrozen);
       return pairMargin(ui, side[0]!, di, side[1]!);
     },
     rate(k, state, t) {
-      const pair = pairAt(k);
-      if (k >= direct.length) {
-        return pairRate(through[k - direct.length]!.conductance, state.stiffness[pair.i]!, state.stiffness[pair.j]!);
+      const i = fromOf(k);
+      const j = toOf(k);
+      if (k >= direct) {
+        return pairRate(through[k - direct]!.conductance, state.stiffness[i]!, state.stiffness[j]!);
       }
-      const { group, link } = direct[k]!;
+      const group = groupAt[k]!;
+      const link = linkAt[k]!;
       const kernel = kernelOf(group);
       kernel.conductance(groupOf(group), link, state, t, conductances);
       if (species === 1 || !kernel.diffusive) {
-        return pairRate(conductances[0]!, state.stiffness[pair.i]!, state.stiffness[pair.j]!);
+        return pairRate(conductances[0]!, state.stiffness[i]!, state.stiffness[j]!);
       }
       diagonal.fill(0);
       common.fill(0);
-      addExchange(pair.i, state);
-      addExchange(pair.j, state);
+      addExchange(i, state);
+      addExchange(j, state);
       return diffusivePairRate(diagonal, common, conductances, species);
     },
     flow(k, state, t) {
-      const pair = pairAt(k);
-      if (k >= direct.length) {
-        return through[k - direct.length]!.conductance * (state.pressure[pair.i]! - state.pressure[pair.j]!);
+      const i = fromOf(k);
+      const j = toOf(k);
+      if (k >= direct) {
+        return through[k - direct]!.conductance * (state.pressure[i]! - state.pressure[j]!);
       }
-      const { group, link } = direct[k]!;
+      const group = groupAt[k]!;
+      const link = linkAt[k]!;
       kernelOf(group).flow(groupOf(group), link, state, t, flows);
       let sum = 0;
       for (let s = 0; s < species; s++) sum += flows[s]!;
@@ -238,6 +250,7 @@ export function createPairs(system: NetworkSystem, linkOpen: readonly Uint8Array
 /** Every two bubbles that reach each other through cavities only, whatever the valves; clusters of too many are left out. */
 function viaCavities(network: Network): Via[] {
   const { nodes } = network;
+  if (!nodes.kind.includes(CAVITY)) return [];
   const parent = Int32Array.from({ length: nodes.count }, (_, i) => i);
   const root = (i: number): number => {
     while (parent[i] !== i) i = parent[i] = parent[parent[i]!]!;

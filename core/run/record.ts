@@ -4,9 +4,24 @@
 
 /** The names of the contract, in no order. */
 export const EVENT_NAMES = [
-  'pair-unstable', 'pair-stable', 'bubble-vanished', 'mouth-passed', 'mouth-regained', 'split-begins', 'split-ends',
-  'micelles-begin', 'micelles-end', 'collapse-begins', 'collapse-ends', 'film-ruptured', 'bubbles-merged',
-  'valve-opened', 'valve-shut', 'limit-exceeded', 'criterion-broken', 'run-ended',
+  'pair-unstable',
+  'pair-stable',
+  'bubble-vanished',
+  'mouth-passed',
+  'mouth-regained',
+  'split-begins',
+  'split-ends',
+  'micelles-begin',
+  'micelles-end',
+  'collapse-begins',
+  'collapse-ends',
+  'film-ruptured',
+  'bubbles-merged',
+  'valve-opened',
+  'valve-shut',
+  'limit-exceeded',
+  'criterion-broken',
+  'run-ended',
 ] as const;
 export type EventName = (typeof EVENT_NAMES)[number];
 

@@ -1,15 +1,15 @@
 /** A scenario before it runs: its bubbles and pairs, whether the network as drawn is stable, and which laws it is outside of. */
-import { chooseMethod } from '../integrate2/choose.ts';
-import { rateBound } from '../integrate2/rate-bound.ts';
+import { chooseMethod } from '../integrate/choose.ts';
 import type { Scenario } from '../scenario/schema.ts';
 import { compileOrThrow } from './drive.ts';
+import { watchLimits } from './events/limits.ts';
 import { createFrameMaker } from './frames.ts';
-import { excess, networkLimits } from './limits.ts';
 import { networkModes } from './modes.ts';
 import { createPairs } from './pairs.ts';
 import type { Frame } from './record.ts';
 import { isValveOpen } from './schedule.ts';
 import { createNetworkSystem } from './system.ts';
+import type { WatchContext } from './watch.ts';
 
 export interface RestReport {
   readonly frame: Frame;
@@ -46,7 +46,7 @@ export function atRest(scenario: Scenario): RestReport {
     Uint8Array.from({ length: table.count }, (_, l) => (isValveOpen(table, l, 0) ? 1 : 0)),
   );
   system.setActive(alive, linkOpen);
-  const bound = rateBound(system, 0, amounts);
+  const bound = system.rateBound(0, amounts);
   const method = chooseMethod(system, amounts, scenario.run.until, scenario.run.method, false);
   if (!system.evaluate(0, amounts, true)) throw new Error('a compiled scenario has no state');
   const pairs = createPairs(system, linkOpen, scenario.run.until);
@@ -62,10 +62,21 @@ export function atRest(scenario: Scenario): RestReport {
       starves: modes.starves.map(name),
       caveat: modes.caveat,
     },
-    limits: networkLimits(system, alive, linkOpen)
-      .filter((limit) => limit.present() && excess(limit, 0) > 0)
-      .map((limit) => ({ detail: limit.detail, subject: limit.subject, link: limit.link, value: limit.value(0), unit: limit.unit })),
+    limits: exceeded({ system, alive, linkOpen, pairs }),
     method: method.name,
     fastestRelaxation: bound,
   };
+}
+
+/** What a network is outside of as it stands. */
+function exceeded(context: WatchContext): RestReport['limits'] {
+  const watch = watchLimits(context);
+  if (watch === null) return [];
+  const over = new Float64Array(watch.count);
+  watch.evaluate(0, over);
+  return Array.from(over.keys())
+    .filter((k) => over[k]! > 0)
+    .map((k) => watch.tell(k, 0, true, true))
+    .filter((told) => told !== null)
+    .map(({ subject, link, value, unit, detail }) => ({ subject, link, value, unit, detail }));
 }

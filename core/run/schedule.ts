@@ -2,17 +2,27 @@
 import type { LinkTable, Network } from '../network/network.ts';
 import { longestStep, nextBreak, type Waveform } from '../network/waveform.ts';
 
-function waves(network: Network): Waveform[] {
-  return [network.ambient, ...network.nodes.drive.filter((wave) => wave !== null), ...network.feeds.map((feed) => feed.rate)];
+/** Everything of a network that follows a waveform that is not constant. */
+export function movingWaves(network: Network): Waveform[] {
+  const waves = [
+    network.ambient,
+    ...network.nodes.drive.filter((wave) => wave !== null),
+    ...network.feeds.map((feed) => feed.rate),
+  ];
+  return waves.filter((wave) => wave.wave !== 'constant');
 }
 
 /** The first instant after t at which a waveform breaks; Infinity where none does. */
-export function nextWaveBreak(network: Network, t: number): number {
-  return Math.min(Infinity, ...waves(network).map((wave) => nextBreak(wave, t)));
+export function nextWaveBreak(waves: readonly Waveform[], t: number): number {
+  let next = Infinity;
+  for (const wave of waves) next = Math.min(next, nextBreak(wave, t));
+  return next;
 }
 
-export function longestWaveStep(network: Network): number {
-  return Math.min(Infinity, ...waves(network).map(longestStep));
+export function longestWaveStep(waves: readonly Waveform[]): number {
+  let longest = Infinity;
+  for (const wave of waves) longest = Math.min(longest, longestStep(wave));
+  return longest;
 }
 
 /** The first instant after t at which a valve moves. */

@@ -5,6 +5,7 @@
 import type { System } from '../integrate/system.ts';
 import type { AssembledMatrix } from '../integrate/linear/assembled.ts';
 import { createMatrix } from '../integrate/linear/choose-matrix.ts';
+import { createColumnSums } from './column-sums.ts';
 import { evaluateNodes } from '../network/evaluate.ts';
 import { BUBBLE, CAVITY, OUTSIDE, POOL, stateSize, type Network } from '../network/network.ts';
 import { createNodeState, setActiveBubbles, type NodeState } from '../network/node-state.ts';
@@ -21,6 +22,20 @@ export interface SourceTerms {
   /** Place of an unknown in the list, or -1. */
   readonly place: Int32Array;
   readonly coefficients: Float64Array; // 3 a place: mol/s, mol/s^2, mol/s^3
+}
+
+/** Adds a + b tau + c tau^2, mol/s, to what unknown u gets. */
+export function addSource(sources: SourceTerms, u: number, a: number, b: number, c: number): void {
+  let place = sources.place[u]!;
+  if (place < 0) {
+    place = sources.count++;
+    sources.place[u] = place;
+    sources.unknown[place] = u;
+    sources.coefficients.fill(0, 3 * place, 3 * place + 3);
+  }
+  sources.coefficients[3 * place]! += a;
+  sources.coefficients[3 * place + 1]! += b;
+  sources.coefficients[3 * place + 2]! += c;
 }
 
 export interface NetworkSystem extends System {
@@ -59,6 +74,7 @@ export function createNetworkSystem(network: Network, tolerance: number, pressur
     coefficients: new Float64Array(3 * size),
   };
   let matrix: AssembledMatrix | null = null;
+  let columnSums: ReturnType<typeof createColumnSums> | null = null;
 
   const assembled = (): AssembledMatrix => (matrix ??= buildMatrix(network, groups));
 
@@ -115,8 +131,14 @@ export function createNetworkSystem(network: Network, tolerance: number, pressur
       if (feeds.length > 0) addFeeds(network, (wave) => waveformSlope(wave, t, side(t)), active, timeDerivative);
       const tau = t - sources.origin;
       for (let q = 0; q < sources.count; q++) {
-        timeDerivative[sources.unknown[q]!]! += sources.coefficients[3 * q + 1]! + 2 * tau * sources.coefficients[3 * q + 2]!;
+        timeDerivative[sources.unknown[q]!]! +=
+          sources.coefficients[3 * q + 1]! + 2 * tau * sources.coefficients[3 * q + 2]!;
       }
+    },
+
+    rateBound(t, y) {
+      if (!system.evaluate(t, y, true)) return NaN;
+      return (columnSums ??= createColumnSums(size, species, groups))(state, t);
     },
 
     errorScale(y, out) {
@@ -129,11 +151,13 @@ export function createNetworkSystem(network: Network, tolerance: number, pressur
           let n = 0;
           for (let k = 0; k < species; k++) n += y[i * species + k]!;
           // A trace is resolved to the tolerance down to a ten-thousandth of the bubble's gas.
-          for (let k = 0; k < species; k++) out[i * species + k] = tolerance * (species === 1 ? n : y[i * species + k]! + 1e-4 * n);
+          for (let k = 0; k < species; k++)
+            out[i * species + k] = tolerance * (species === 1 ? n : y[i * species + k]! + 1e-4 * n);
         } else if (kind === CAVITY) {
           for (let k = 0; k < species; k++) out[i * species + k] = (tolerance * pressureSignal * nodes.volume[i]!) / RT;
         } else if (kind === POOL) {
-          for (let k = 0; k < species; k++) out[i * species + k] = tolerance * pressureSignal * nodes.capacity[i * species + k]!;
+          for (let k = 0; k < species; k++)
+            out[i * species + k] = tolerance * pressureSignal * nodes.capacity[i * species + k]!;
         } else {
           for (let k = 0; k < species; k++) out[i * species + k] = Infinity;
         }

@@ -8,7 +8,12 @@ import { TUBE } from '../transfer/tube.ts';
 import type { Adjacency } from './adjacency.ts';
 
 /** Places in the adjacency of the open links of node i whose other end lives. */
-export function openLinks(i: number, adjacency: Adjacency, alive: Uint8Array, linkOpen: readonly Uint8Array[]): number[] {
+export function openLinks(
+  i: number,
+  adjacency: Adjacency,
+  alive: Uint8Array,
+  linkOpen: readonly Uint8Array[],
+): number[] {
   const places: number[] = [];
   for (let e = adjacency.start[i]!; e < adjacency.start[i + 1]!; e++) {
     if (alive[adjacency.other[e]!] !== 0 && linkOpen[adjacency.group[e]!]![adjacency.link[e]!] !== 0) places.push(e);
@@ -75,7 +80,8 @@ export function joinNeighbours(
       const linked = openLinks(from, adjacency, alive, linkOpen).some(
         (e) => adjacency.other[e] === to && adjacency.group[e] === group,
       );
-      if (!linked) joints.push({ group, first: adjacency.link[places[a]!]!, second: adjacency.link[places[b]!]!, from, to });
+      if (!linked)
+        joints.push({ group, first: adjacency.link[places[a]!]!, second: adjacency.link[places[b]!]!, from, to });
     }
   }
   if (joints.length === 0) return network;
@@ -83,10 +89,12 @@ export function joinNeighbours(
   const madeBefore = Math.min(0, ...network.links.flatMap((table) => Array.from(table.origin)));
   const links = network.links.map((table, g) => {
     const mine = joints.filter((joint) => joint.group === g);
-    return mine.length === 0 ? table : extend(network, table, mine, (joint) => {
-      made.push(`${network.linkName(table.origin[joint.first]!)}+${network.linkName(table.origin[joint.second]!)}`);
-      return madeBefore - made.length;
-    });
+    return mine.length === 0
+      ? table
+      : extend(network, table, mine, (joint) => {
+          made.push(`${network.linkName(table.origin[joint.first]!)}+${network.linkName(table.origin[joint.second]!)}`);
+          return madeBefore - made.length;
+        });
   });
   const before = network.linkName;
   return {
@@ -96,7 +104,12 @@ export function joinNeighbours(
   };
 }
 
-function extend(network: Network, table: LinkTable, joints: readonly Joint[], nameOf: (joint: Joint) => number): LinkTable {
+function extend(
+  network: Network,
+  table: LinkTable,
+  joints: readonly Joint[],
+  nameOf: (joint: Joint) => number,
+): LinkTable {
   const { stride } = table;
   const count = table.count + joints.length;
   const coefficients = new Float64Array(count * stride);

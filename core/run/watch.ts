@@ -41,10 +41,10 @@ export interface Watch {
    * The node state is that of the instant. null: nothing to tell.
    */
   tell(k: number, t: number, positive: boolean, first: boolean): Happening | null;
-  /** A name that stays with quantity k when the network is remade, to carry its last sign over. */
-  key(k: number): string;
+  /** A number, its own within the watch, that stays with quantity k when the network is remade: it carries its last sign over. */
+  key(k: number): number;
   /** What always holds and cannot change, to be told at the start; what it names goes into `told` and is not told again. */
-  standing?(t: number, told: Set<string>): Happening[];
+  standing?(t: number, told: Set<number>): Happening[];
   /** True where only the first passage of each quantity is told. */
   readonly once?: boolean;
 }

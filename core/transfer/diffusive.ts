@@ -7,7 +7,14 @@ import type { NodeState } from '../network/node-state.ts';
 import type { LinkGroup, LinkKernel } from './link-kernel.ts';
 
 /** S and its slopes: out = [S, dS/dR_from, dS/dR_to, dS/dt at constant radii]. `k` is the species (some S depend on its diffusivity). */
-export type Geometry = (table: LinkTable, link: number, k: number, state: NodeState, t: number, out: Float64Array) => void;
+export type Geometry = (
+  table: LinkTable,
+  link: number,
+  k: number,
+  state: NodeState,
+  t: number,
+  out: Float64Array,
+) => void;
 
 const shape = new Float64Array(4);
 
@@ -66,8 +73,8 @@ export function diffusiveKernel(geometry: Geometry): LinkKernel {
             values[slots[at + 3 * block]!]! += dB;
           }
           // Composition does not drift at constant amounts: partial pressures move in proportion.
-          const driftA = pressure[a]! === 0 ? 0 : (partial[a * species + k]! / pressure[a]!) * pressureDrift[a]!;
-          const driftB = pressure[b]! === 0 ? 0 : (partial[b * species + k]! / pressure[b]!) * pressureDrift[b]!;
+          const driftA = pressure[a] === 0 ? 0 : (partial[a * species + k]! / pressure[a]!) * pressureDrift[a]!;
+          const driftB = pressure[b] === 0 ? 0 : (partial[b * species + k]! / pressure[b]!) * pressureDrift[b]!;
           const drift =
             gS * (driftA - driftB) +
             g * (shape[1]! * radiusDrift[a]! + shape[2]! * radiusDrift[b]! + shape[3]!) * difference;
@@ -81,7 +88,8 @@ export function diffusiveKernel(geometry: Geometry): LinkKernel {
       const { table } = group;
       for (let k = 0; k < state.species; k++) {
         geometry(table, link, k, state, t, shape);
-        const difference = state.partial[table.from[link]! * state.species + k]! - state.partial[table.to[link]! * state.species + k]!;
+        const difference =
+          state.partial[table.from[link]! * state.species + k]! - state.partial[table.to[link]! * state.species + k]!;
         out[k] = table.coefficients[link * table.stride + k]! * shape[0]! * difference;
       }
     },

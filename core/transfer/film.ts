@@ -49,6 +49,19 @@ export const sharedAreaFilm: LinkKernel = {
     }
   },
 
+  flow(group, link, state, t, out) {
+    if (state.species !== 1) {
+      general.flow(group, link, state, t, out);
+      return;
+    }
+    const { from, to, coefficients } = group.table;
+    const { pressure, radius } = state;
+    const i = from[link]!;
+    const j = to[link]!;
+    const R = Math.min(radius[i]!, radius[j]!);
+    out[0] = coefficients[link]! * R * R * (pressure[i]! - pressure[j]!);
+  },
+
   addSlopes(group, state, t, values, timeDerivative) {
     if (state.species !== 1) {
       general.addSlopes(group, state, t, values, timeDerivative);

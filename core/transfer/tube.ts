@@ -136,7 +136,8 @@ export const tube: LinkKernel = {
     const pi = state.pressure[table.from[link]!]!;
     const pj = state.pressure[table.to[link]!]!;
     composition(state, pi >= pj ? table.from[link]! : table.to[link]!, fractions);
-    out[0] = (table.coefficients[link * table.stride]! * (pi + pj)) / tubeViscosity(state.network, table, link, fractions);
+    out[0] =
+      (table.coefficients[link * table.stride]! * (pi + pj)) / tubeViscosity(state.network, table, link, fractions);
   },
 };
 

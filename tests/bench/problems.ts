@@ -5,7 +5,15 @@
 import type { Start } from '../../core/run/engine.ts';
 import { createFilm } from '../../core/films/create.ts';
 import { capHeight, faceArea } from '../../core/network/geometry.ts';
-import { BUBBLE, CAVITY, POOL, RESERVOIR, type LinkTable, type Network, type NodeTable } from '../../core/network/network.ts';
+import {
+  BUBBLE,
+  CAVITY,
+  POOL,
+  RESERVOIR,
+  type LinkTable,
+  type Network,
+  type NodeTable,
+} from '../../core/network/network.ts';
 import { createNodeState } from '../../core/network/node-state.ts';
 import { amountAtSize } from '../../core/network/shaped.ts';
 import { GAS_CONSTANT } from '../../core/quantities/constants.ts';
@@ -20,7 +28,11 @@ export interface Problem {
   readonly name: string;
   readonly start: Start;
   readonly settings: RunSettings;
-  readonly check: { readonly endTime: number; readonly R21: number; readonly radii?: readonly [least: number, greatest: number] };
+  readonly check: {
+    readonly endTime: number;
+    readonly R21: number;
+    readonly radii?: readonly [least: number, greatest: number];
+  };
 }
 
 /** mulberry32 and Box-Muller, first value of each pair. */
@@ -98,7 +110,10 @@ function bubbleAmounts(net: Network, sizes: Float64Array): Float64Array {
 }
 
 const pureLiquid = (): Film =>
-  createFilm({ tension: { law: 'constant', clean: 0.03 }, loading: null, supply: { kind: 'none' }, micelles: null }, TEMPERATURE);
+  createFilm(
+    { tension: { law: 'constant', clean: 0.03 }, loading: null, supply: { kind: 'none' }, micelles: null },
+    TEMPERATURE,
+  );
 
 function sizesOf(count: number, total: number, size: (g: number) => number): Float64Array {
   const g = gaussian();
@@ -107,7 +122,12 @@ function sizesOf(count: number, total: number, size: (g: number) => number): Flo
   return sizes;
 }
 
-const settings = (until: number, untilBubbles: number | null, tolerance: number, vanishRadius: number): RunSettings => ({
+const settings = (
+  until: number,
+  untilBubbles: number | null,
+  tolerance: number,
+  vanishRadius: number,
+): RunSettings => ({
   until,
   untilBubbles,
   frames: 0,
@@ -222,7 +242,10 @@ export function cycleProblem(B: number, tolerance: number): Problem {
     TEMPERATURE,
   );
   const sizes = sizesOf(B, B + 2, (g) => capHeight(a, 3e-3 * Math.exp(0.05 * g)));
-  const nodes = nodeTable({ count: B + 2, bubbleCount: B, kinds: [CAVITY, RESERVOIR], faces: 2, mouth: a, sizes }, film);
+  const nodes = nodeTable(
+    { count: B + 2, bubbleCount: B, kinds: [CAVITY, RESERVOIR], faces: 2, mouth: a, sizes },
+    film,
+  );
   const rest = AMBIENT + (4 * 0.0375) / 3e-3;
   nodes.volume[B] = 2e-6;
   const drive = nodes.drive.slice();

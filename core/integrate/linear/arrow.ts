@@ -140,22 +140,5 @@ export function createArrow(n: number, hubs: readonly number[]): AssembledMatrix
       substitute(x);
       for (let a = 0; a < m; a++) x[hubs[a]!] = atHubs[a]!;
     },
-
-    rateBound() {
-      let largest = 0;
-      for (let i = 0; i < n; i++) {
-        let sum = Math.abs(diagonal[i]!);
-        for (const p of rows) sum += Math.abs(p[i]!);
-        largest = Math.max(largest, sum);
-      }
-      for (let b = 0; b < m; b++) {
-        const c = columns[b]!;
-        let sum = 0;
-        for (let i = 0; i < n; i++) sum += Math.abs(c[i]!);
-        for (let a = 0; a < m; a++) sum += Math.abs(block[a * m + b]!);
-        largest = Math.max(largest, sum);
-      }
-      return largest;
-    },
   };
 }

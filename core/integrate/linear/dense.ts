@@ -86,15 +86,5 @@ export function createDense(n: number): AssembledMatrix {
     },
 
     solve: (x) => solveDense(lu, n, pivots, x),
-
-    rateBound() {
-      let largest = 0;
-      for (let j = 0; j < n; j++) {
-        let sum = 0;
-        for (let i = 0; i < n; i++) sum += Math.abs(values[i * n + j]!);
-        largest = Math.max(largest, sum);
-      }
-      return largest;
-    },
   };
 }

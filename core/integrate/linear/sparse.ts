@@ -123,13 +123,5 @@ export function createSparse(n: number, rows: Int32Array, columns: Int32Array): 
         x[order[k]!] = sum;
       }
     },
-
-    rateBound() {
-      const sums = permuted.fill(0);
-      for (let e = 0; e < values.length; e++) sums[rowColumns[e]!]! += Math.abs(values[e]!);
-      let largest = 0;
-      for (let k = 0; k < n; k++) largest = Math.max(largest, sums[k]!);
-      return largest;
-    },
   };
 }

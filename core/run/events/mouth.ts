@@ -23,9 +23,17 @@ export const watchMouths: WatchMaker = ({ system, alive }) => {
       if (first) return null;
       const radius = system.state.radius[mounted[k]!]!;
       return positive
-        ? happening('mouth-regained', name(k), { value: radius, unit: 'm', detail: 'grows past the hemisphere of its mouth' })
-        : happening('mouth-passed', name(k), { value: radius, unit: 'm', detail: 'sinks below the hemisphere of its mouth' });
+        ? happening('mouth-regained', name(k), {
+            value: radius,
+            unit: 'm',
+            detail: 'grows past the hemisphere of its mouth',
+          })
+        : happening('mouth-passed', name(k), {
+            value: radius,
+            unit: 'm',
+            detail: 'sinks below the hemisphere of its mouth',
+          });
     },
-    key: (k) => `mouth ${name(k)}`,
+    key: (k) => nodes.origin[mounted[k]!]!,
   };
 };

@@ -13,7 +13,6 @@ export const watchPairs: WatchMaker = ({ system, pairs, alive }) => {
   const from = Int32Array.from(moving, (k) => pairs.from(k));
   const to = Int32Array.from(moving, (k) => pairs.to(k));
   const oneGas = state.species === 1;
-  const keyOf = (k: number): string => `pair ${pairs.linkName(k)} ${pairs.ends(k).join(' ')}`;
   const value = (m: number, t: number): number => {
     if (!pairs.isOpen(moving[m]!, alive)) return NaN;
     // With one gas the margin's sign is that of u_i + u_j: no need of the rest.
@@ -35,14 +34,14 @@ export const watchPairs: WatchMaker = ({ system, pairs, alive }) => {
       const standing: Happening[] = [];
       for (const k of steady) {
         if (!pairs.isOpen(k, alive)) continue;
-        const key = keyOf(k);
+        const key = pairs.key(k);
         if (told.has(key)) continue;
         told.add(key);
         standing.push(describe(pairs, state, k, t, false));
       }
       return standing;
     },
-    key: (m) => keyOf(moving[m]!),
+    key: (m) => pairs.key(moving[m]!),
   };
 };
 

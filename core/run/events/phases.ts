@@ -30,9 +30,13 @@ function watchIndicator(
       tell(k, _t, positive, first) {
         if (first && !positive) return null;
         const tension = system.state.tension[watched[k]!]!;
-        return happening(positive ? begins : ends, name(k), { value: tension, unit: 'N/m', detail: positive ? beginning : ending });
+        return happening(positive ? begins : ends, name(k), {
+          value: tension,
+          unit: 'N/m',
+          detail: positive ? beginning : ending,
+        });
       },
-      key: (k) => `${begins} ${name(k)}`,
+      key: (k) => nodes.origin[watched[k]!]!,
     };
   };
 }

@@ -32,6 +32,11 @@ export function systemOf(problem: Problem, matrix: AssembledMatrix = createDense
       matrix.clear();
       problem.jacobian(t, y, set);
     },
+    rateBound(t, y) {
+      const sums = new Float64Array(problem.size);
+      problem.jacobian(t, y, (_row, column, value) => void (sums[column]! += Math.abs(value)));
+      return sums.reduce((largest, sum) => (sum <= largest ? largest : sum), 0);
+    },
     errorScale(y, out) {
       for (let i = 0; i < problem.size; i++) out[i] = problem.scale(y[i]!, i);
     },
@@ -258,12 +263,19 @@ export function denseError(stepper: OwnedStepper, exact: (t: number) => number, 
 }
 
 /** `count` steps of one length from `start` to `end`, whatever the error. */
-export function runEvenly(stepper: OwnedStepper, y: readonly number[], start: number, end: number, count: number): void {
+export function runEvenly(
+  stepper: OwnedStepper,
+  y: readonly number[],
+  start: number,
+  end: number,
+  count: number,
+): void {
   const h = (end - start) / count;
   stepper.restart(start, Float64Array.from(y), h);
   for (let s = 1; s <= count; s++) {
     const limit = s === count ? end : start + s * h;
     const outcome = stepper.step(limit);
-    if (outcome.kind !== 'accepted' || stepper.time !== limit) throw new Error(`step ${s} was not even: ${outcome.kind}`);
+    if (outcome.kind !== 'accepted' || stepper.time !== limit)
+      throw new Error(`step ${s} was not even: ${outcome.kind}`);
   }
 }

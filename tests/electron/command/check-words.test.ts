@@ -28,7 +28,7 @@ const REPORT: CheckReport = {
   warnings: [],
   bubbles: [BUBBLE, { ...BUBBLE, bubble: 'B', radius_m: 4.9e-3 }],
   pairs: [PAIR],
-  growing: { count: 1, fastestRate: 4, feeds: ['A'], starves: ['B'] },
+  growing: { count: 1, fastestRate: 4, feeds: ['A'], starves: ['B'], caveat: '' },
   limits: [],
   method: 'stiff',
   fastestRelaxation_per_s: 1e5,
@@ -47,14 +47,14 @@ describe('a check in words', () => {
   });
 
   it('says that a network without growing modes holds', () => {
-    const growing = { count: 0, fastestRate: 0, feeds: [], starves: [] };
+    const growing = { count: 0, fastestRate: 0, feeds: [], starves: [], caveat: '' };
     const text = words({ growing, pairs: [{ ...PAIR, margin: 1.5, rate_per_s: -4 }] });
     expect(text).toContain('HOLDS: no disturbance grows.');
     expect(text).toMatch(/t1 +A +B +1\.5 +evens out +250 ms/);
   });
 
   it('tells of a pair that only the rest of the network holds', () => {
-    const growing = { count: 0, fastestRate: 0, feeds: [], starves: [] };
+    const growing = { count: 0, fastestRate: 0, feeds: [], starves: [], caveat: '' };
     expect(words({ growing })).toContain('1 pair would run away if alone; the rest of the network holds it');
   });
 
@@ -83,7 +83,7 @@ describe('a check in words', () => {
 
   it('names six bubbles of a mode and counts the rest', () => {
     const feeds = Array.from({ length: 9 }, (_, k) => `b${k}`);
-    const text = words({ growing: { count: 3, fastestRate: 1, feeds, starves: ['z'] } });
+    const text = words({ growing: { count: 3, fastestRate: 1, feeds, starves: ['z'], caveat: '' } });
     expect(text).toContain('3 independent disturbances grow');
     expect(text).toContain('It feeds b0, b1, b2, b3, b4, b5 and 3 more and starves z.');
   });

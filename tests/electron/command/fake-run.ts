@@ -51,6 +51,7 @@ export function fakeRun(plan: FakePlan): (scenario: unknown, observer: RunObserv
           if (time === plan.steps) end({ kind: 'done' });
         }
       },
+      radiiAt: () => new Float64Array(0),
       interrupt() {
         end({ kind: 'interrupted' });
       },

@@ -6,7 +6,11 @@ import { RODAS5P } from '../../../../core/integrate/tableaus/rodas5p.ts';
 const stages = 8;
 const A = lower(RODAS5P.stages);
 const C = lower(RODAS5P.couplings);
-const Gamma = inverse(Matrix.eye(stages).mul(1 / RODAS5P.gamma).sub(C));
+const Gamma = inverse(
+  Matrix.eye(stages)
+    .mul(1 / RODAS5P.gamma)
+    .sub(C),
+);
 const alpha = A.mmul(Gamma);
 const beta = alpha.clone().add(Gamma);
 const m = [...RODAS5P.stages[7], 1];
@@ -22,7 +26,9 @@ function lower(rows: readonly (readonly number[])[]): Matrix {
 }
 
 function weights(transformed: readonly number[]): number[] {
-  return Matrix.rowVector([...transformed]).mmul(Gamma).to1DArray();
+  return Matrix.rowVector([...transformed])
+    .mmul(Gamma)
+    .to1DArray();
 }
 
 /** A rooted tree as the list of its root's branches. */
@@ -68,7 +74,10 @@ const ofOrder: Readonly<Record<number, readonly Tree[]>> = {
     [[chain3]],
   ],
 };
-const trees = (most: number): Tree[] => Object.values(ofOrder).flat().filter((tree) => order(tree) <= most);
+const trees = (most: number): Tree[] =>
+  Object.values(ofOrder)
+    .flat()
+    .filter((tree) => order(tree) <= most);
 
 /** Dense weights b_i(theta) in the original form. */
 function denseWeights(theta: number): number[] {
@@ -124,7 +133,14 @@ describe('the coefficients of RODAS5P', () => {
       const b = Matrix.rowVector(weights(w));
       const R = (z: number): number => {
         const ones = Matrix.ones(stages, 1);
-        return 1 + z * b.mmul(inverse(Matrix.eye(stages).sub(beta.clone().mul(z)))).mmul(ones).get(0, 0);
+        return (
+          1 +
+          z *
+            b
+              .mmul(inverse(Matrix.eye(stages).sub(beta.clone().mul(z))))
+              .mmul(ones)
+              .get(0, 0)
+        );
       };
       for (const z of [-0.1, -1, -10, -100, -1e3, -1e4]) expect(Math.abs(R(z))).toBeLessThan(1);
       expect(Math.abs(R(-1e6))).toBeLessThan(1e-4);

@@ -50,7 +50,7 @@ const trees: readonly Tree[] = [
 ];
 
 const denseWeights = (theta: number): number[] =>
-  dense.map((row) => row.reduce((sum, coefficient, power) => sum + coefficient * theta ** (power + 1), 0));
+  dense.map((row) => row.reduce<number>((sum, coefficient, power) => sum + coefficient * theta ** (power + 1), 0));
 
 describe("the coefficients of Tsitouras' pair", () => {
   it('fulfil all 17 order conditions to order 5', () => {
