@@ -184,31 +184,6 @@ export function createCarried(
     cluster.take(group, now.radius, list.startAmount, list.memberStart[c]! * species);
   }
 
-  /** Whether the neighbours of cluster c went as foreseen, so that its flows did too, to a tenth of the tolerance. */
-  function wentAsForeseen(c: number, h: number): boolean {
-    const share = 0.1 * tolerance;
-    const onward = pastStep === 0 ? 0 : h / pastStep;
-    for (let q = list.memberStart[c]!; q < list.memberStart[c + 1]!; q++) {
-      const i = members[q]!;
-      for (let e = adjacency.start[i]!; e < adjacency.start[i + 1]!; e++) {
-        const j = adjacency.other[e]!;
-        if (clusterOf[j] === c || alive[j] === 0) continue;
-        for (let k = 0; k < species; k++) {
-          const u = j * species + k;
-          const p = now.partial[u]!;
-          const miss = next.partial[u]! - p - (p - past.partial[u]!) * onward;
-          if (!(Math.abs(miss) <= share * Math.abs(now.partial[i * species + k]! - p))) return false;
-        }
-        const R = now.radius[j]!;
-        if (R === Infinity) continue;
-        const miss = next.radius[j]! - R - (R - past.radius[j]!) * onward;
-        // A contact film goes with the square of the radius.
-        if (!(Math.abs(miss) <= 0.5 * share * R)) return false;
-      }
-    }
-    return true;
-  }
-
   /** Node states of the living carried bubbles at the end of the step, by the same laws as the others'. */
   function showEnd(t: number, candidate: Float64Array): void {
     scratch.set(candidate);
@@ -278,7 +253,6 @@ export function createCarried(
       let ofBubbles = 0;
       let ofAll = 0;
       for (let c = 0; c < list.count; c++) {
-        if (wentAsForeseen(c, h)) continue;
         take(c);
         cluster.integrate(t, h, ambient, known);
         list.correct(c, cluster, misplaced);
@@ -361,7 +335,7 @@ export function createCarried(
   /** The amounts of cluster c's bubbles at tau, into `amounts`: it is integrated again, as it was when its step stood. */
   function followTo(c: number, tau: number): void {
     take(c);
-    cluster.integrate(start, stepLength, ambient, list.corrected[c] === 1 ? known : ahead);
+    cluster.integrate(start, stepLength, ambient, known);
     cluster.amountsAt(tau, amounts);
   }
 }

@@ -23,8 +23,6 @@ export interface ClusterList {
   readonly predicted: readonly number[];
   /** Gas without a neighbour to go to, mol, cluster * species + k. */
   readonly dropped: readonly number[];
-  /** 1 where `correct` followed `fit`. */
-  readonly corrected: readonly number[];
   clear(): void;
   add(group: readonly number[], y: Float64Array): void;
   readGroup(c: number, out: number[]): void;
@@ -54,7 +52,6 @@ export function createClusterList(species: number): ClusterList {
   const predicted: number[] = [];
   const fitted: number[] = []; // 3 numbers a flow
   const dropped: number[] = [];
-  const corrected: number[] = [];
 
   function keep(c: number, found: Cluster): void {
     const first = memberStart[c]!;
@@ -80,7 +77,6 @@ export function createClusterList(species: number): ClusterList {
     moved,
     predicted,
     dropped,
-    corrected,
     get count() {
       return count;
     },
@@ -110,7 +106,6 @@ export function createClusterList(species: number): ClusterList {
     fit(c, found, h, sources) {
       const base = flowStart[c]!;
       flows = flowStart[c + 1] = base + found.flows;
-      corrected[c] = 0;
       keep(c, found);
       for (let q = 0; q < found.flows; q++) {
         receiver[base + q] = found.receivers[q]!;
@@ -129,7 +124,6 @@ export function createClusterList(species: number): ClusterList {
     },
 
     correct(c, found, misplaced) {
-      corrected[c] = 1;
       keep(c, found);
       for (let q = flowStart[c]!; q < flowStart[c + 1]!; q++) misplaced[receiver[q]!]! += moved[q]! - predicted[q]!;
     },

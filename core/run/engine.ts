@@ -25,7 +25,7 @@ import { handOver, joinNeighbours } from './vanish.ts';
 /** Below this many candidates each vanishing is a stop of the main system: exact, and cheap enough. */
 const FEWEST_CARRIED = 24;
 /** A network is made smaller once this share of its bubbles has gone. */
-const GONE_SHARE = 0.25;
+const GONE_SHARE = 0.5;
 /** A run is interrupted between steps: a step may not hold more frames than are written in a moment. */
 const MOST_FRAMES_A_STEP = 2000;
 const NOTHING = new Float64Array(0);

@@ -70,12 +70,13 @@ export function createObservation(context: WatchContext): Observation {
     total += watch.count;
   }
   const before = new Float64Array(total);
-  const middle = new Float64Array(total);
+  const looksInside = total <= LOOK_INSIDE;
+  const middle = new Float64Array(looksInside ? total : 0);
   const after = new Float64Array(total);
   const views = (whole: Float64Array): Float64Array[] =>
     watches.map((watch, w) => whole.subarray(offsets[w], offsets[w]! + watch.count));
   const beforeViews = views(before);
-  const middleViews = views(middle);
+  const middleViews = looksInside ? views(middle) : [];
   const afterViews = views(after);
   const needsSlopes = watches.some((watch) => watch.needsSlopes);
 
@@ -130,7 +131,7 @@ export function createObservation(context: WatchContext): Observation {
       const found: RunEvent[] = [];
       if (!lookAt(to)) return [];
       evaluateAll(to, afterViews);
-      const inside = total <= LOOK_INSIDE && lookAt(0.5 * (from + to));
+      const inside = looksInside && lookAt(0.5 * (from + to));
       if (inside) evaluateAll(0.5 * (from + to), middleViews);
       const search = (w: number, k: number, a: number, fa: number, b: number, fb: number): void => {
         if (Number.isNaN(fa) || Number.isNaN(fb) || fa >= 0 === fb >= 0) return;

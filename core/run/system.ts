@@ -14,6 +14,9 @@ import { GAS_CONSTANT } from '../quantities/constants.ts';
 import { createLinkGroup, type LinkGroup, type LinkKernel } from '../transfer/link-kernel.ts';
 import { LINK_KERNELS } from '../transfer/register.ts';
 
+/** Up to this size the work space of `rateBound` is kept. */
+const LARGEST_KEPT = 1000;
+
 /** Gas that arrives from bubbles that are carried apart: per unknown a quadratic in time since `origin`. */
 export interface SourceTerms {
   origin: number;
@@ -138,7 +141,10 @@ export function createNetworkSystem(network: Network, tolerance: number, pressur
 
     rateBound(t, y) {
       if (!system.evaluate(t, y, true)) return NaN;
-      return (columnSums ??= createColumnSums(size, species, groups))(state, t);
+      // Small networks are asked at every step, large ones once.
+      const sums = columnSums ?? createColumnSums(size, species, groups);
+      if (size <= LARGEST_KEPT) columnSums = sums;
+      return sums(state, t);
     },
 
     errorScale(y, out) {
