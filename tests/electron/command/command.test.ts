@@ -82,8 +82,8 @@ describe('frothwright run', () => {
 });
 
 describe('Ctrl-C on a run', () => {
-  /** Ten million frames: no run is over before the signal comes. */
-  const ENDLESS = { ...TWO_BUBBLES, run: { until: '60 s', frames: 10_000_000 } };
+  /** Four million frames, the rows of series.csv within its limit: no run is over before the signal comes. */
+  const ENDLESS = { ...TWO_BUBBLES, run: { until: '60 s', frames: 4_000_000 } };
 
   async function interrupted(press: (kill: (signal: NodeJS.Signals) => void) => void) {
     const directory = scratchDirectory();
@@ -130,7 +130,7 @@ describe('frothwright check', () => {
     expect({ status, stderr }).toEqual({ status: 0, stderr: '' });
     expect(stdout).toContain('DOES NOT HOLD');
     expect(stdout).toMatch(/feeds A and starves B/);
-    expect(stdout).toMatch(/t1 {2}A {2}B {2}.*runs away/);
+    expect(stdout).toMatch(/t1 +A +B .*runs away/);
   });
 
   it('gives its whole report as JSON', () => {
