@@ -52,9 +52,12 @@ export interface Carried extends Companion {
   commit(t: number, y: Float64Array, adjust: (unknown: number, delta: number) => void): void;
   /** The step is cut: the state is taken from `complete`, and the past is forgotten. */
   cutShort(): void;
-  /** Turns a dense output of the main system at time t inside the last step into the whole state: carried bubbles, gas on its way. */
+  /**
+   * Turns a dense output of the main system at time t inside the last step into the whole state: carried bubbles, gas on its way.
+   * Bubbles that had vanished by then hold nothing.
+   */
   complete(t: number, y: Float64Array): void;
-  /** Writes the amounts of one carried bubble at time t inside the last step into the state y. */
+  /** Writes the amounts of one carried bubble at time t inside the last step, or those it vanished with, into the state y. */
   completeOne(t: number, node: number, y: Float64Array): void;
 }
 
@@ -184,17 +187,14 @@ export function createCarried(
     cluster.take(group, now.radius, list.startAmount, list.memberStart[c]! * species);
   }
 
-  /** Node states of the living carried bubbles at the end of the step, by the same laws as the others'. */
+  /** Node states of carried bubbles at the end of the step, or at their own: by the same laws as the others'. */
   function showEnd(t: number, candidate: Float64Array): void {
     scratch.set(candidate);
     state.sphereCount = state.shapedCount = 0;
     for (let q = 0; q < members.length; q++) {
       const i = members[q]!;
-      if (list.goneAt[q] !== Infinity) {
-        state.radius[i] = 0;
-        continue;
-      }
-      for (let k = 0; k < species; k++) scratch[i * species + k] = list.endAmount[q * species + k]!;
+      const amount = list.goneAt[q] === Infinity ? list.endAmount : list.goneAmount;
+      for (let k = 0; k < species; k++) scratch[i * species + k] = amount[q * species + k]!;
       activateBubble(state, i);
     }
     if (!system.evaluate(t, scratch, withSlopes)) throw new Error('a dying bubble has no state at the end of a step');
@@ -281,7 +281,9 @@ export function createCarried(
       const vanished: Vanishing[] = [];
       members.forEach((node, q) => {
         if (list.goneAt[q] === Infinity) return;
-        vanished.push({ node, time: start + list.goneAt[q]!, amount: list.goneAmount[q]! });
+        let amount = 0;
+        for (let k = 0; k < species; k++) amount += list.goneAmount[q * species + k]!;
+        vanished.push({ node, time: start + list.goneAt[q]!, amount });
       });
       return vanished.sort((a, b) => a.time - b.time || a.node - b.node);
     },
@@ -326,8 +328,13 @@ export function createCarried(
 
     completeOne(t, node, y) {
       const c = clusterOf[node]!;
+      const q = members.indexOf(node, list.memberStart[c]);
+      if (start + list.goneAt[q]! <= t) {
+        for (let k = 0; k < species; k++) y[node * species + k] = list.goneAmount[q * species + k]!;
+        return;
+      }
       followTo(c, t - start);
-      const m = group.indexOf(node);
+      const m = q - list.memberStart[c]!;
       for (let k = 0; k < species; k++) y[node * species + k] = amounts[m * species + k]!;
     },
   };

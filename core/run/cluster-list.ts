@@ -13,7 +13,7 @@ export interface ClusterList {
   /** Amounts at the start and the end of the step, mol, place among `members` * species + k. */
   readonly startAmount: readonly number[];
   readonly endAmount: readonly number[];
-  /** Per place among `members`: when it vanished, s after the start (Infinity: it lives), and with how much, mol. */
+  /** Per place among `members`: when it vanished, s after the start (Infinity: it lives); and with how much, mol, place * species + k. */
   readonly goneAt: readonly number[];
   readonly goneAmount: readonly number[];
   /** Flows out of the clusters: how many, the network's unknown that each goes to, what it moved and was foreseen to move, mol. */
@@ -58,8 +58,10 @@ export function createClusterList(species: number): ClusterList {
     const size = memberStart[c + 1]! - first;
     for (let m = 0; m < size; m++) {
       goneAt[first + m] = found.goneAt[m]!;
-      goneAmount[first + m] = found.goneAmount[m]!;
-      for (let k = 0; k < species; k++) endAmount[(first + m) * species + k] = found.amount[m * species + k]!;
+      for (let k = 0; k < species; k++) {
+        endAmount[(first + m) * species + k] = found.amount[m * species + k]!;
+        if (goneAt[first + m] !== Infinity) goneAmount[(first + m) * species + k] = found.goneAmount[m * species + k]!;
+      }
     }
     for (let k = 0; k < species; k++) dropped[c * species + k] = found.dropped[k]!;
     const base = flowStart[c]!;

@@ -27,7 +27,7 @@ export interface Cluster {
   readonly endFlow: readonly number[];
   /** The bubbles' amounts at the end, member * species + k. */
   readonly amount: readonly number[];
-  /** When each vanished, s after the start (Infinity: it lives), and with how much. */
+  /** When each vanished, s after the start (Infinity: it lives), and with how much, mol, member * species + k. */
   readonly goneAt: readonly number[];
   readonly goneAmount: readonly number[];
   /** What had no neighbour to go to, mol a species. */

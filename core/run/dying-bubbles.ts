@@ -37,7 +37,7 @@ export interface DyingBubbles {
   /** Where in z the moved amounts begin, and the length of z. */
   readonly quadratures: number;
   readonly dimension: number;
-  /** When each member vanished, s after the start, and with how much; Infinity while it lives. */
+  /** When each member vanished, s after the start (Infinity while it lives), and with how much, mol, member * species + k. */
   readonly goneAt: number[];
   readonly goneAmount: number[];
   /** What had no neighbour to go to, mol a species. */
@@ -202,12 +202,12 @@ export function createDyingBubbles(
     amountsAt(m, Math.sqrt(z[m * width]!), balance);
     const rest = balance[0]!;
     goneAt[m] = tau;
-    goneAmount[m] = rest;
     let parts = 0;
     for (let e = 0; e < outer; e++) if (outerMember[e] === m) parts++;
     for (let e = 0; e < innerEntry.length; e++) if (innerOther(e, m) >= 0) parts++;
     for (let k = 0; k < species; k++) {
       const share = rest * (species === 1 ? 1 : z[m * width + 1 + k]!);
+      goneAmount[m * species + k] = share;
       if (parts === 0) dropped[k]! += share;
       for (let e = 0; e < outer; e++) if (outerMember[e] === m) z[quadratures + e * species + k]! += share / parts;
     }
@@ -305,10 +305,7 @@ export function createDyingBubbles(
       startTime = start;
       ambientPressure = ambient;
       prepareCourses(surroundings);
-      for (let m = 0; m < count; m++) {
-        goneAt[m] = Infinity;
-        goneAmount[m] = 0;
-      }
+      for (let m = 0; m < count; m++) goneAt[m] = Infinity;
       for (let k = 0; k < species; k++) dropped[k] = 0;
     },
   };

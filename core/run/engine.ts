@@ -64,6 +64,8 @@ interface Build {
   readonly system: NetworkSystem;
   readonly adjacency: Adjacency;
   readonly alive: Uint8Array;
+  /** Scratch of `livingIn`. */
+  readonly living: Uint8Array;
   readonly linkAlive: readonly Uint8Array[];
   readonly linkOpen: readonly Uint8Array[];
   readonly pairs: Pairs;
@@ -159,6 +161,7 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
       system,
       adjacency,
       alive,
+      living: new Uint8Array(network.nodes.count),
       linkAlive,
       linkOpen,
       pairs,
@@ -219,16 +222,29 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
   /** The whole state at time t inside the last step, in `work`; node states follow. */
   function lookAt(t: number): boolean {
     if (t === standing) return true;
-    const { stepper, carried, system, alive } = build;
+    const { stepper, carried, system } = build;
     stepper.interpolate(t, work);
     if (carried) {
       carried.complete(t, work);
-      setActiveBubbles(system.state, alive);
+      setActiveBubbles(system.state, livingIn(work));
     }
     const found = evaluate(t, work);
     resumeActive();
     standing = found ? t : NaN;
     return found;
+  }
+
+  /** Who lives in a whole state inside the last step: bubbles that are carried apart may have vanished on the way. */
+  function livingIn(y: Float64Array): Uint8Array {
+    const { carried, alive, living } = build;
+    if (carried === null) return alive;
+    living.set(alive);
+    for (const i of carried.members) {
+      let n = 0;
+      for (let k = 0; k < species; k++) n += y[i * species + k]!;
+      if (n === 0) living[i] = 0;
+    }
+    return living;
   }
 
   function emit(event: RunEvent): void {
@@ -257,9 +273,10 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
   }
 
   function takeFrame(t: number, y: Float64Array): void {
-    const { system, alive, linkOpen, pairs } = build;
+    const { system, linkOpen, pairs } = build;
     // Carried bubbles are to be seen too.
     standing = NaN;
+    const alive = livingIn(y);
     setActiveBubbles(system.state, alive);
     if (!system.evaluate(t, y, true)) throw new Error(`no state at frame time ${t}`);
     observer.frame(frames!.make(system, alive, linkOpen, pairs, t, y, ledger.gasBalance(y, NOTHING)));

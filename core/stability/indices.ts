@@ -7,6 +7,8 @@
 
 import { GAS_CONSTANT } from '../quantities/constants.ts';
 
+const ROUNDING = 1e-14;
+
 /**
  * Bubble index `2 eps / gamma` of a sphere: above 1 the bubble pushes back (Gibbs: eps > gamma/2 for one face).
  * @param elasticity eps = d gamma / d ln A of one face, N/m
@@ -24,7 +26,10 @@ export function bubbleIndex(elasticity: number, tension: number): number {
  */
 export function pairMargin(stiffnessI: number, stiffnessJ: number, capillaryI: number, capillaryJ: number): number {
   const capillary = capillaryI + capillaryJ;
-  return capillary > 0 ? 1 + (stiffnessI + stiffnessJ) / capillary : NaN;
+  if (!(capillary > 0)) return NaN;
+  const margin = 1 + (stiffnessI + stiffnessJ) / capillary;
+  // Pure liquids have a margin of nought: what rounding leaves of 1 - 1 would read like a number.
+  return Math.abs(margin) < ROUNDING ? 0 : margin;
 }
 
 /**
