@@ -69,7 +69,7 @@ function solveSafely(state: NodeState, film: Film, i: number, P: number, nRT: nu
     const slope = balance[1]! * balance[2]! + balance[0]! * balance[3]!;
     let next = x - F / slope;
     if (!(next > low && next < high)) next = high === Infinity ? 2 * x : 0.5 * (low + high);
-    if (Math.abs(next - x) <= 2e-16 * x || (high - low <= 4e-16 * high && low > 0)) return next;
+    if (Math.abs(next - x) <= 2e-16 * x || (high < Infinity && high - low <= 4e-16 * high && low > 0)) return next;
     x = next;
   }
   return NaN;

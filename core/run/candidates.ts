@@ -20,3 +20,13 @@ export function carriedCandidates(network: Network): Uint8Array {
   for (const feed of network.feeds) candidate[feed.node] = 0;
   return candidate;
 }
+
+/** Below this many candidates each vanishing is a stop of the main system: exact, and cheap enough. */
+const FEWEST_CARRIED = 24;
+
+/** Whether a run that begins with these candidates, of which those with 1 in `alive` are there, carries its dying bubbles apart. */
+export function carriesApart(candidates: Uint8Array, alive: Uint8Array): boolean {
+  let count = 0;
+  for (let i = 0; i < candidates.length; i++) count += candidates[i]! & alive[i]!;
+  return count >= FEWEST_CARRIED;
+}

@@ -10,7 +10,7 @@ import { subsetNetwork } from '../network/subset.ts';
 import type { Waveform } from '../network/waveform.ts';
 import { buildAdjacency, type Adjacency } from './adjacency.ts';
 import { createCarried, type Carried } from './carried.ts';
-import { carriedCandidates } from './candidates.ts';
+import { carriedCandidates, carriesApart } from './candidates.ts';
 import { createFrameMaker } from './frames.ts';
 import { createLedger, surfactantOf } from './ledger.ts';
 import { createMemory, createObservation, type Observation } from './observation.ts';
@@ -22,8 +22,6 @@ import { createNetworkSystem, type NetworkSystem } from './system.ts';
 import { findPassage } from './locate.ts';
 import { handOver, joinNeighbours } from './vanish.ts';
 
-/** Below this many candidates each vanishing is a stop of the main system: exact, and cheap enough. */
-const FEWEST_CARRIED = 24;
 /** A network is made smaller once this share of its bubbles has gone. */
 const GONE_SHARE = 0.5;
 /** A run is interrupted between steps: a step may not hold more frames than are written in a moment. */
@@ -80,6 +78,9 @@ interface Build {
   gone: number;
 }
 
+/** An instant in a sentence. */
+const instant = (t: number): string => `${Number(t.toPrecision(6))} s`;
+
 export function startNetworkRun(start: Start, settings: RunSettings, observer: RunObserver): Run {
   const { until, tolerance, vanishRadius } = settings;
   const species = start.network.species.length;
@@ -134,9 +135,8 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     const pairs = createPairs(system, linkOpen, until);
     const observation = createObservation({ system, alive, linkOpen, pairs });
     const candidates = carriedCandidates(network);
-    const count = candidates.reduce((sum, c, i) => sum + (alive[i] === 1 ? c : 0), 0);
     // Once a run carries its dying bubbles apart it goes on to do so: the methods differ in when they look, not in what they find.
-    const carries = method === null ? count >= FEWEST_CARRIED : method.carries && count > 0;
+    const carries = method === null ? carriesApart(candidates, alive) : method.carries;
     const carried = carries
       ? createCarried(
           system,
@@ -272,6 +272,13 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     return index === settings.frames ? until : (until * index) / settings.frames;
   }
 
+  /** From the present state of all that live: surfactant lost or made, relative to what there was; the worst is kept. */
+  function noteSurfactant(): void {
+    if (!(surfactantAtStart > 0)) return;
+    const surfactant = surfactantLeft + build.observation.surfactantHeld() - surfactantAtStart;
+    worstSurfactant = Math.max(worstSurfactant, Math.abs(surfactant) / surfactantAtStart);
+  }
+
   function takeFrame(t: number, y: Float64Array): void {
     const { system, linkOpen, pairs } = build;
     // Carried bubbles are to be seen too.
@@ -279,6 +286,8 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     const alive = livingIn(y);
     setActiveBubbles(system.state, alive);
     if (!system.evaluate(t, y, true)) throw new Error(`no state at frame time ${t}`);
+    // Who vanished inside the step is not yet in the books.
+    if (build.carried === null) noteSurfactant();
     observer.frame(frames!.make(system, alive, linkOpen, pairs, t, y, ledger.gasBalance(y, NOTHING)));
   }
 
@@ -306,7 +315,12 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
         outcome.reason === 'not-finite'
           ? 'its state has no meaning in the laws it was given'
           : 'no step was short enough to follow it';
-      finish({ kind: 'failed', node, time: t, sentence: `the run could not go on past ${t} s at ${node}: ${why}` });
+      finish({
+        kind: 'failed',
+        node,
+        time: t,
+        sentence: `the run could not go on past ${instant(t)} at ${node}: ${why}`,
+      });
       return;
     }
     const end = stepper.time;
@@ -499,7 +513,7 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
         kind: 'failed',
         node,
         time: at,
-        sentence: `the run stops at ${at} s: ${node} was drawn flat into its mouth, and a film inside the tube is outside the model`,
+        sentence: `the run stops at ${instant(at)}: ${node} was drawn flat into its mouth, and a film inside the tube is outside the model`,
       });
       return;
     }
@@ -542,7 +556,7 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
         kind: 'failed',
         node: '',
         time: t,
-        sentence: `the run could not go on past ${t} s: the state there has no meaning in the laws`,
+        sentence: `the run could not go on past ${instant(t)}: the state there has no meaning in the laws`,
       });
       return;
     }
@@ -588,12 +602,12 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
         kind: 'failed',
         node: '',
         time: t,
-        sentence: `the explicit method was asked for, but the network is stiff at ${t} s (it relaxes within ${time} s): use method auto or stiff`,
+        sentence: `the explicit method was asked for, but the network is stiff at ${instant(t)} (it adjusts within ${time} s): use method auto or stiff`,
       });
       return;
     }
     warnings.push(
-      `at ${t} s the network turned stiff (it relaxes within ${time} s): the stiff method went on from there`,
+      `from ${instant(t)} on the stiff method did the run: the network had turned stiff (it adjusts within ${time} s)`,
     );
     countSteps();
     method = { name: 'stiff', carries: method!.carries };
@@ -611,11 +625,7 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     const lastFrame = frames !== null && (nextFrame === 0 || frameTime(nextFrame - 1) < t);
     if (lastFrame && system.evaluate(t, stepper.state, true)) takeFrame(t, stepper.state);
     ledger.gasBalance(stepper.state, NOTHING);
-    let surfactant = surfactantLeft - surfactantAtStart;
-    if (surfactantAtStart > 0 && system.evaluate(t, stepper.state, false)) {
-      surfactant += build.observation.surfactantHeld();
-      worstSurfactant = Math.abs(surfactant) / surfactantAtStart;
-    }
+    if (system.evaluate(t, stepper.state, false)) noteSurfactant();
     countSteps();
     emit({
       time: t,

@@ -1,6 +1,7 @@
 /** A scenario before it runs: its bubbles and pairs, whether the network as drawn is stable, and which laws it is outside of. */
 import { chooseMethod } from '../integrate/choose.ts';
 import type { Scenario } from '../scenario/schema.ts';
+import { carriedCandidates, carriesApart } from './candidates.ts';
 import { compileOrThrow } from './drive.ts';
 import { watchLimits } from './events/limits.ts';
 import { createFrameMaker } from './frames.ts';
@@ -28,6 +29,8 @@ export interface RestReport {
     readonly value: number;
     readonly unit: string;
   }[];
+  /** Links whose valves are shut at the start, by id: nothing passes them in what is reported here. */
+  readonly shut: readonly string[];
   /** The method that `auto` would take, or the one that was asked for. */
   readonly method: string;
   /** A bound on how fast anything relaxes or grows, 1/s. */
@@ -47,7 +50,8 @@ export function atRest(scenario: Scenario): RestReport {
   );
   system.setActive(alive, linkOpen);
   const bound = system.rateBound(0, amounts);
-  const method = chooseMethod(system, amounts, scenario.run.until, scenario.run.method, false);
+  const carries = carriesApart(carriedCandidates(network), alive);
+  const method = chooseMethod(system, amounts, scenario.run.until, scenario.run.method, carries);
   if (!system.evaluate(0, amounts, true)) throw new Error('a compiled scenario has no state');
   const pairs = createPairs(system, linkOpen, scenario.run.until);
   const frame = createFrameMaker(network).make(system, alive, linkOpen, pairs, 0, amounts, 0);
@@ -63,6 +67,11 @@ export function atRest(scenario: Scenario): RestReport {
       caveat: modes.caveat,
     },
     limits: exceeded({ system, alive, linkOpen, pairs }),
+    shut: network.links.flatMap((table, g) =>
+      Array.from(table.origin, (origin, l) => (linkOpen[g]![l] === 0 ? network.linkName(origin) : '')).filter(
+        (link) => link !== '',
+      ),
+    ),
     method: method.name,
     fastestRelaxation: bound,
   };

@@ -3,7 +3,7 @@ export interface RunSettings {
   readonly until: number; // s
   /** The run also ends at the vanishing that leaves this many bubbles; null: it does not. */
   readonly untilBubbles: number | null;
-  /** Frames from the start to `until`, evenly spaced, the start itself not counted; 0: none but first and last. */
+  /** Frames from the start to `until`, evenly spaced, the start itself not counted; 0: none at all. */
   readonly frames: number;
   readonly tolerance: number;
   readonly method: 'auto' | 'explicit' | 'stiff';

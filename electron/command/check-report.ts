@@ -44,6 +44,8 @@ export interface CheckReport {
   readonly pairs: readonly PairAtRest[];
   readonly growing: RestReport['growing'];
   readonly limits: RestReport['limits'];
+  /** Links shut at the start, by id. */
+  readonly shut: readonly string[];
   readonly method: string;
   readonly fastestRelaxation_per_s: number;
 }
@@ -88,6 +90,7 @@ export function checkReport(
       .filter((pair) => !Number.isNaN(pair.margin))
       .sort((a, b) => a.margin - b.margin || b.rate_per_s - a.rate_per_s),
     growing: rest.growing,
+    shut: rest.shut,
     limits: rest.limits,
     method: rest.method,
     fastestRelaxation_per_s: rest.fastestRelaxation,

@@ -58,7 +58,15 @@ function counted(counts: Readonly<Record<string, number>>, words: Words): string
   return parts.length === 0 ? 'no links' : parts.join(', ');
 }
 
-function holdWords({ growing, pairs }: CheckReport): string[] {
+function holdWords(report: CheckReport): string[] {
+  const { growing, shut } = report;
+  const provisos = [];
+  if (shut.length > 0) provisos.push(`  Judged with shut what is shut at the start: ${names(shut)}.`);
+  if (growing.caveat !== '') provisos.push(`  Mind: ${growing.caveat}.`);
+  return [...verdictWords(report), ...provisos];
+}
+
+function verdictWords({ growing, pairs }: CheckReport): string[] {
   const unstable = pairs.filter((pair) => pair.margin < 1).length;
   if (growing.count === 0) {
     const but =
@@ -75,7 +83,7 @@ function holdWords({ growing, pairs }: CheckReport): string[] {
 }
 
 function names(ids: readonly string[]): string {
-  if (ids.length === 0) return 'no bubble';
+  if (ids.length === 0) return 'none';
   const shown = ids.slice(0, NAMES_SHOWN).join(', ');
   return ids.length > NAMES_SHOWN ? `${shown} and ${ids.length - NAMES_SHOWN} more` : shown;
 }
@@ -126,11 +134,11 @@ function fate({ margin, rate_per_s: rate }: PairAtRest): string {
 }
 
 function methodWords({ method, fastestRelaxation_per_s: rate, until_s: until }: CheckReport): string {
-  const stiffness =
+  const pace =
     rate > 0
-      ? `; the fastest adjustment takes ${timeOfRate(rate)}, ${humanNumber(until * rate)} of them fit into the run of ${humanTime(until)}`
+      ? `: the fastest part of the network adjusts in ${timeOfRate(rate)}, the run lasts ${humanTime(until)}`
       : '';
-  return `A run would use the ${method} method${stiffness}.`;
+  return `A run would use the ${method} method${pace}.`;
 }
 
 function section(title: string, lines: readonly string[]): string[] {

@@ -153,7 +153,7 @@ function reportStop(terminal: Terminal, task: RunTask, result: RunResult): numbe
       terminal.err(`Stopped at ${humanTime(result.endTime)} of simulated time; what was computed is in ${task.out}.\n`);
       return EXIT_INTERRUPTED;
     case 'failed':
-      terminal.err(`${stop.sentence} What was computed is in ${task.out}.\n`);
+      terminal.err(`${stop.sentence.replace(/\.?$/, '.')} What was computed is in ${task.out}.\n`);
       return EXIT_NOT_FINISHED;
   }
 }

@@ -30,6 +30,7 @@ const REPORT: CheckReport = {
   pairs: [PAIR],
   growing: { count: 1, fastestRate: 4, feeds: ['A'], starves: ['B'], caveat: '' },
   limits: [],
+  shut: [],
   method: 'stiff',
   fastestRelaxation_per_s: 1e5,
 };
@@ -56,6 +57,13 @@ describe('a check in words', () => {
   it('tells of a pair that only the rest of the network holds', () => {
     const growing = { count: 0, fastestRate: 0, feeds: [], starves: [], caveat: '' };
     expect(words({ growing })).toContain('1 pair would run away if alone; the rest of the network holds it');
+  });
+
+  it('says what a verdict rests on: valves that are shut, and modes that were counted for the whole gas', () => {
+    const growing = { count: 0, fastestRate: 0, feeds: [], starves: [], caveat: 'counted for the whole gas' };
+    const text = words({ growing, shut: ['tap'], pairs: [] });
+    expect(text).toContain('HOLDS: no disturbance grows.\n  Judged with shut what is shut at the start: tap.\n');
+    expect(text).toContain('  Mind: counted for the whole gas.');
   });
 
   it('calls a pair that a trapped gas holds, but that leaks, neither safe nor a runaway', () => {
@@ -101,7 +109,7 @@ describe('a check in words', () => {
 
   it('ends with the method and how stiff the network is', () => {
     expect(words({})).toMatch(
-      /A run would use the stiff method; the fastest adjustment takes 10 µs, 6000000 of them fit into the run of 1 min\.\n$/,
+      /A run would use the stiff method: the fastest part of the network adjusts in 10 µs, the run lasts 1 min\.\n$/,
     );
   });
 });
