@@ -166,7 +166,8 @@ describe.each(Object.entries(all))('any stepper (%s): where the laws end', (_nam
     let outcome = stepper.step(2);
     for (let s = 0; s < 2000 && outcome.kind === 'accepted'; s++) outcome = stepper.step(2);
     expect(outcome.kind).not.toBe('accepted');
-    expect(stepper.time).toBeLessThan(1 + 1e-9);
+    // The end is where y^2 = 1 - t is used up: it moves with the errors of the steps, each 1e-6 of y at most.
+    expect(stepper.time).toBeLessThan(1 + 1e-5);
     expect(Math.abs(stepper.state[1]! - Math.sqrt(1 - Math.min(1, stepper.time)))).toBeLessThan(1e-3);
     if (outcome.kind === 'failed') {
       expect(outcome.worst).toBe(1);
