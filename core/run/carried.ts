@@ -106,6 +106,8 @@ export function createCarried(
   const found: number[] = []; // selected, before they are grouped
   const group: number[] = [];
   const amounts: number[] = [];
+  /** The cluster whose course the worker holds, between the neighbours' known ends; -1: none. */
+  let followed = -1;
 
   const ahead = { now, past, next, pastStep: 0, step: 0 }; // the end of the step extrapolated
   const known = { now, past, next, pastStep: 0, step: 0 }; // and known
@@ -183,6 +185,7 @@ export function createCarried(
 
   /** Cluster c into the worker. */
   function take(c: number): void {
+    followed = -1;
     list.readGroup(c, group);
     cluster.take(group, now.radius, list.startAmount, list.memberStart[c]! * species);
   }
@@ -339,10 +342,16 @@ export function createCarried(
     },
   };
 
-  /** The amounts of cluster c's bubbles at tau, into `amounts`: it is integrated again, as it was when its step stood. */
+  /**
+   * The amounts of cluster c's bubbles at tau, into `amounts`: it is integrated again, as it was when its step stood, unless it was
+   * the last to be.
+   */
   function followTo(c: number, tau: number): void {
-    take(c);
-    cluster.integrate(start, stepLength, ambient, known);
+    if (followed !== c) {
+      take(c);
+      cluster.integrate(start, stepLength, ambient, known);
+      followed = c;
+    }
     cluster.amountsAt(tau, amounts);
   }
 }

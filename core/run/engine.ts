@@ -392,7 +392,9 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
       for (let q = 0; q < count; q++) {
         const i = index[q]!;
         if (room(i) > 0) continue;
-        const time = passage(t, first ? first.time : end, [i], () => room(i));
+        const until = first ? first.time : end;
+        const at = (when: number): number => (lookAtNodes(when, [i]) ? room(i) : -1);
+        const time = passage(t, at(t), until, at(until), [i], () => room(i));
         if (first === null || time < first.time) {
           first = { node: i, time, kind: build.network.nodes.mouth[i]! > 0 ? 'flat' : 'vanished' };
         }
@@ -427,10 +429,17 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     return found;
   }
 
-  /** The instant in (a, b] at which a quantity of the state of some nodes passes zero. */
-  function passage(a: number, b: number, nodes: readonly number[], quantity: (t: number) => number): number {
+  /** The instant in (a, b] at which a quantity of the state of some nodes, fa at a and fb at b, passes zero. */
+  function passage(
+    a: number,
+    fa: number,
+    b: number,
+    fb: number,
+    nodes: readonly number[],
+    quantity: (t: number) => number,
+  ): number {
     const at = (t: number): number => (lookAtNodes(t, nodes) ? quantity(t) : -1);
-    return findPassage(at, a, at(a), b, at(b), Math.max(4e-16 * b, 1e-3 * tolerance * (b - a)));
+    return findPassage(at, a, fa, b, fb, Math.max(4e-16 * b, 1e-3 * tolerance * (b - a)));
   }
 
   /** Emits what happens in (t, stopAt], in time order. */

@@ -31,13 +31,20 @@ export interface Observation {
   /**
    * Passages inside (from, to], unordered.
    * @param lookAt puts the node states to an instant of the step
-   * @param passage finds where a quantity of the state of some nodes passes zero between two instants
+   * @param passage finds where a quantity of the state of some nodes passes zero between two instants with known values
    */
   passages(
     from: number,
     to: number,
     lookAt: (t: number) => boolean,
-    passage: (a: number, b: number, nodes: readonly number[], quantity: (t: number) => number) => number,
+    passage: (
+      a: number,
+      fa: number,
+      b: number,
+      fb: number,
+      nodes: readonly number[],
+      quantity: (t: number) => number,
+    ) => number,
     lookAtNodes: (t: number, nodes: readonly number[]) => boolean,
     memory: Memory,
   ): RunEvent[];
@@ -137,7 +144,7 @@ export function createObservation(context: WatchContext): Observation {
         if (Number.isNaN(fa) || Number.isNaN(fb) || fa >= 0 === fb >= 0) return;
         const watch = watches[w]!;
         const nodes = watch.touches(k);
-        const time = passage(a, b, nodes, (t) => watch.value(k, t));
+        const time = passage(a, fa, b, fb, nodes, (t) => watch.value(k, t));
         lookAtNodes(time, nodes);
         memory.signs[kinds[w]!]!.set(watch.key(k), fb >= 0);
         const event = tell(w, k, time, fb >= 0, false, memory);
