@@ -57,6 +57,8 @@ export interface Carried extends Companion {
    * Bubbles that had vanished by then hold nothing.
    */
   complete(t: number, y: Float64Array): void;
+  /** Gas that by time t inside the last step had left with bubbles that had no neighbour, mol a species; the array is written anew. */
+  droppedBy(t: number): Float64Array;
   /** Writes the amounts of one carried bubble at time t inside the last step, or those it vanished with, into the state y. */
   completeOne(t: number, node: number, y: Float64Array): void;
 }
@@ -106,6 +108,7 @@ export function createCarried(
   const found: number[] = []; // selected, before they are grouped
   const group: number[] = [];
   const amounts: number[] = [];
+  const droppedSoFar = new Float64Array(species);
   /** The cluster whose course the worker holds, between the neighbours' known ends; -1: none. */
   let followed = -1;
 
@@ -315,7 +318,10 @@ export function createCarried(
         for (let k = 0; k < species; k++)
           adjust(i * species + k, list.endAmount[q * species + k]! - y[i * species + k]!);
       });
-      for (let q = 0; q < list.count * species; q++) dropped[q % species]! += list.dropped[q]!;
+      for (let q = 0; q < list.count * species; q++) {
+        dropped[q % species]! += list.dropped[q]!;
+        list.dropped[q] = 0;
+      }
     },
 
     complete(t, y) {
@@ -327,6 +333,18 @@ export function createCarried(
         followTo(c, tau);
         list.complete(c, tau, amounts, y);
       }
+    },
+
+    droppedBy(t) {
+      droppedSoFar.fill(0);
+      for (let c = 0; c < list.count; c++) {
+        // Only the last of a cluster that leads nowhere has no neighbour.
+        let last = 0;
+        for (let q = list.memberStart[c]!; q < list.memberStart[c + 1]!; q++) last = Math.max(last, list.goneAt[q]!);
+        if (start + last > t) continue;
+        for (let k = 0; k < species; k++) droppedSoFar[k] = droppedSoFar[k]! + list.dropped[c * species + k]!;
+      }
+      return droppedSoFar;
     },
 
     completeOne(t, node, y) {

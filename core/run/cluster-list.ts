@@ -21,8 +21,8 @@ export interface ClusterList {
   readonly receiver: readonly number[];
   readonly moved: readonly number[];
   readonly predicted: readonly number[];
-  /** Gas without a neighbour to go to, mol, cluster * species + k. */
-  readonly dropped: readonly number[];
+  /** Gas without a neighbour to go to, mol, cluster * species + k; whoever books it sets it to nought. */
+  readonly dropped: number[];
   clear(): void;
   add(group: readonly number[], y: Float64Array): void;
   readGroup(c: number, out: number[]): void;

@@ -2,33 +2,23 @@
  * The driver: steps a network from start to end, stands still at everything that happens on the way, and keeps the balance.
  * Observers hear events and frames; what the run did is told by `result`. Pausing (`advance` in slices) changes no number.
  */
-import { chooseMethod, createStepper, type Method } from '../integrate/choose.ts';
-import type { OwnedStepper } from '../integrate/owned-stepper.ts';
-import { BUBBLE, type Network } from '../network/network.ts';
-import { activateBubble, setActiveBubbles } from '../network/node-state.ts';
-import { subsetNetwork } from '../network/subset.ts';
-import type { Waveform } from '../network/waveform.ts';
-import { buildAdjacency, type Adjacency } from './adjacency.ts';
-import { createCarried, type Carried } from './carried.ts';
-import { carriedCandidates, carriesApart } from './candidates.ts';
+import { createStepper } from '../integrate/choose.ts';
+import { BUBBLE } from '../network/network.ts';
+import { setActiveBubbles } from '../network/node-state.ts';
+import { bury, construct, nameOf, rebuild, type Build, type Start } from './build.ts';
+import { firstFall, type Fall } from './fall.ts';
 import { createFrameMaker } from './frames.ts';
+import { lookInside } from './inside.ts';
 import { createLedger, surfactantOf } from './ledger.ts';
-import { createMemory, createObservation, type Observation } from './observation.ts';
-import { createPairs, type Pairs } from './pairs.ts';
+import { createMemory } from './observation.ts';
 import type { EventName, RunEvent, RunObserver, RunResult, RunStop } from './record.ts';
-import { isValveOpen, longestWaveStep, movingWaves, nextValveMove, nextWaveBreak } from './schedule.ts';
+import { isValveOpen, nextValveMove, nextWaveBreak } from './schedule.ts';
 import type { RunSettings } from './settings.ts';
-import { createNetworkSystem, type NetworkSystem } from './system.ts';
-import { findPassage } from './locate.ts';
-import { handOver, joinNeighbours } from './vanish.ts';
+import { handOver, joinNeighbours, vanishedEvent } from './vanish.ts';
 
 /** A network is made smaller once this share of its bubbles has gone. */
 const GONE_SHARE = 0.5;
-/** A run is interrupted between steps: a step may not hold more frames than are written in a moment. */
-const MOST_FRAMES_A_STEP = 2000;
 const NOTHING = new Float64Array(0);
-/** A cap lower than this share of its mouth's radius counts as flat: below it the film is drawn into the mouth. */
-const FLATTEST = 1e-3;
 
 export interface Run {
   readonly time: number;
@@ -43,39 +33,6 @@ export interface Run {
   result(): RunResult;
   /** Radius of curvature, m, of every bubble that lives, at a time inside the last step. */
   radiiAt(t: number): Float64Array;
-}
-
-/** A network with the state it starts from. */
-export interface Start {
-  readonly network: Network;
-  /** mol, node * species + k; accounts at zero. */
-  readonly amounts: Float64Array;
-  /** Radius of each free sphere, height of each cap, m; one entry a node. */
-  readonly sizes: Float64Array;
-  /** Size of the pressure differences that drive the network, Pa. */
-  readonly pressureSignal: number;
-}
-
-/** Everything that is made anew when the network changes its shape. */
-interface Build {
-  readonly network: Network;
-  readonly system: NetworkSystem;
-  readonly adjacency: Adjacency;
-  readonly alive: Uint8Array;
-  /** Scratch of `livingIn`. */
-  readonly living: Uint8Array;
-  readonly linkAlive: readonly Uint8Array[];
-  readonly linkOpen: readonly Uint8Array[];
-  readonly pairs: Pairs;
-  readonly carried: Carried | null;
-  readonly observation: Observation;
-  /** Waveforms that are not constant. */
-  readonly waves: readonly Waveform[];
-  /** No step is longer, s: a wave is not jumped over, and the run can be interrupted between its frames. */
-  readonly longestStep: number;
-  stepper: OwnedStepper;
-  bubbles: number;
-  gone: number;
 }
 
 /** An instant in a sentence. */
@@ -93,116 +50,30 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
   const surfactantAtStart = surfactantOf(start.network);
   let surfactantLeft = 0; // of vanished bubbles
   let worstSurfactant = 0;
-  let method: Method | null = null;
   let stop: RunStop | null = null;
   let nextFrame = 0;
-  let work = new Float64Array(start.amounts.length);
-  let build = construct(start.network, start.amounts, start.sizes, 0, null, 0);
+  const plan = { settings, pressureSignal: start.pressureSignal, dropped: ledger.dropped };
+  let build = construct(plan, {
+    network: start.network,
+    amounts: start.amounts,
+    sizes: start.sizes,
+    time: 0,
+    gone: new Uint8Array(start.network.nodes.count),
+    step: 0,
+    method: null,
+  });
+  let inside = lookInside(build, tolerance);
   let valveMove = nextValveMove(build.network, 0);
-  /** The instant whose node states are at hand inside the last step; NaN: none. */
-  let standing = NaN;
 
-  evaluate(0, build.stepper.state);
-  build.pairs.refresh(build.system.state, 0);
-  emitAll(build.observation.opening(0, memory, true));
+  takeStock(0, true);
   takeFrames(0, () => build.stepper.state);
 
-  // ------------------------------------------------------------------------------------------------- building
-
-  function construct(
-    network: Network,
-    amounts: Float64Array,
-    sizes: Float64Array,
-    t: number,
-    gone: Uint8Array | null,
-    firstStep: number,
-  ): Build {
-    const system = createNetworkSystem(network, tolerance, start.pressureSignal);
-    system.state.size.set(sizes);
-    const waves = movingWaves(network);
-    system.segmentEnd = nextWaveBreak(waves, t);
-    const alive = Uint8Array.from({ length: network.nodes.count }, (_, i) => (gone !== null && gone[i] === 1 ? 0 : 1));
-    const linkAlive = network.links.map((table) =>
-      Uint8Array.from({ length: table.count }, (_, l) =>
-        alive[table.from[l]!] === 0 || alive[table.to[l]!] === 0 ? 0 : 1,
-      ),
-    );
-    const linkOpen = network.links.map((table, g) =>
-      Uint8Array.from({ length: table.count }, (_, l) => (linkAlive[g]![l] === 1 && isValveOpen(table, l, t) ? 1 : 0)),
-    );
-    system.setActive(alive, linkOpen);
-    const adjacency = buildAdjacency(network);
-    const pairs = createPairs(system, linkOpen, until);
-    const observation = createObservation({ system, alive, linkOpen, pairs });
-    const candidates = carriedCandidates(network);
-    // Once a run carries its dying bubbles apart it goes on to do so: the methods differ in when they look, not in what they find.
-    const carries = method === null ? carriesApart(candidates, alive) : method.carries;
-    const carried = carries
-      ? createCarried(
-          system,
-          adjacency,
-          alive,
-          linkOpen,
-          candidates,
-          vanishRadius,
-          tolerance,
-          ledger.dropped,
-          observation.needsSlopes,
-        )
-      : null;
-    method ??= chooseMethod(system, amounts, until, settings.method, carries);
-    const stepper = createStepper(method, system, until, carried);
-    stepper.restart(t, amounts, firstStep);
-    let bubbles = 0;
-    for (let i = 0; i < network.nodes.bubbleCount; i++) bubbles += alive[i]!;
-    if (work.length !== system.size) work = new Float64Array(system.size);
-    return {
-      network,
-      system,
-      adjacency,
-      alive,
-      living: new Uint8Array(network.nodes.count),
-      linkAlive,
-      linkOpen,
-      pairs,
-      carried,
-      observation,
-      stepper,
-      waves,
-      longestStep: Math.min(longestWaveStep(waves), (MOST_FRAMES_A_STEP * until) / Math.max(1, settings.frames)),
-      bubbles,
-      gone: network.nodes.bubbleCount - bubbles,
-    };
-  }
-
-  /** The same network made anew: without what has gone, or with links that were joined. */
-  function rebuild(network: Network, keepAll: boolean): void {
+  /** The network changes its shape, and everything that is made from it. */
+  function remake(next: Build): void {
     countSteps();
-    const { stepper, alive, linkAlive, system, carried } = build;
-    const t = stepper.time;
-    const h = stepper.nextStep;
-    // Only bubbles go: what is in transit to the nodes after them keeps its places.
-    const inTransit = carried?.inTransit ?? NOTHING;
-    if (keepAll) {
-      const gone = alive.map((a) => (a === 0 ? 1 : 0));
-      build = construct(network, stepper.state.slice(), system.state.size.slice(), t, gone, h);
-    } else {
-      // Accounts and cavities stay; only bubbles go.
-      const smaller = subsetNetwork(network, alive, linkAlive);
-      const amounts = new Float64Array(smaller.nodeBefore.length * species);
-      const sizes = new Float64Array(smaller.nodeBefore.length);
-      smaller.nodeBefore.forEach((i, q) => {
-        for (let k = 0; k < species; k++) amounts[q * species + k] = stepper.state[i * species + k]!;
-        sizes[q] = system.state.size[i]!;
-      });
-      build = construct(smaller.network, amounts, sizes, t, null, h);
-    }
-    if (build.carried) build.carried.inTransit.set(inTransit);
-    else inTransit.forEach((delta, q) => build.stepper.adjust(build.system.size - inTransit.length + q, delta));
-    if (!evaluate(t, build.stepper.state)) throw new Error('a network that was made smaller has no state');
-    build.pairs.refresh(build.system.state, t);
-    // What is only smaller has no pair that was not there before.
-    emitAll(build.observation.opening(t, memory, keepAll));
+    surfactantLeft += build.surfactantLeft;
+    build = next;
+    inside = lookInside(build, tolerance);
   }
 
   function countSteps(): void {
@@ -212,39 +83,14 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     statistics.rateEvaluations += s.rateEvaluations;
   }
 
-  // ------------------------------------------------------------------------------------------------- looking
-
-  /** Node states at (t, y); slopes only where something watches them. */
-  function evaluate(t: number, y: Float64Array): boolean {
-    return build.system.evaluate(t, y, build.observation.needsSlopes);
-  }
-
-  /** The whole state at time t inside the last step, in `work`; node states follow. */
-  function lookAt(t: number): boolean {
-    if (t === standing) return true;
-    const { stepper, carried, system } = build;
-    stepper.interpolate(t, work);
-    if (carried) {
-      carried.complete(t, work);
-      setActiveBubbles(system.state, livingIn(work));
-    }
-    const found = evaluate(t, work);
-    resumeActive();
-    standing = found ? t : NaN;
-    return found;
-  }
-
-  /** Who lives in a whole state inside the last step: bubbles that are carried apart may have vanished on the way. */
-  function livingIn(y: Float64Array): Uint8Array {
-    const { carried, alive, living } = build;
-    if (carried === null) return alive;
-    living.set(alive);
-    for (const i of carried.members) {
-      let n = 0;
-      for (let k = 0; k < species; k++) n += y[i * species + k]!;
-      if (n === 0) living[i] = 0;
-    }
-    return living;
+  /**
+   * Sees the network as it is from time t on and tells what of that was not told: with slopes, which margins are made of.
+   * @param fresh false where nothing can be standing that was not before
+   */
+  function takeStock(t: number, fresh: boolean): void {
+    if (!build.system.evaluate(t, build.stepper.state, true)) throw new Error(`the network has no state at ${t} s`);
+    build.pairs.refresh(build.system.state, t);
+    emitAll(build.observation.opening(t, memory, fresh));
   }
 
   function emit(event: RunEvent): void {
@@ -275,26 +121,21 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
   /** From the present state of all that live: surfactant lost or made, relative to what there was; the worst is kept. */
   function noteSurfactant(): void {
     if (!(surfactantAtStart > 0)) return;
-    const surfactant = surfactantLeft + build.observation.surfactantHeld() - surfactantAtStart;
+    const surfactant = surfactantLeft + build.surfactantLeft + build.observation.surfactantHeld() - surfactantAtStart;
     worstSurfactant = Math.max(worstSurfactant, Math.abs(surfactant) / surfactantAtStart);
   }
 
   function takeFrame(t: number, y: Float64Array): void {
     const { system, linkOpen, pairs } = build;
     // Carried bubbles are to be seen too.
-    standing = NaN;
-    const alive = livingIn(y);
+    inside.standing = NaN;
+    const alive = inside.livingIn(y);
     setActiveBubbles(system.state, alive);
     if (!system.evaluate(t, y, true)) throw new Error(`no state at frame time ${t}`);
     // Who vanished inside the step is not yet in the books.
+    const lost = build.carried?.droppedBy(t) ?? NOTHING;
     if (build.carried === null) noteSurfactant();
-    observer.frame(frames!.make(system, alive, linkOpen, pairs, t, y, ledger.gasBalance(y, NOTHING)));
-  }
-
-  // ------------------------------------------------------------------------------------------------- stepping
-
-  function nameOf(i: number): string {
-    return build.network.nodeName(build.network.nodes.origin[i]!);
+    observer.frame(frames!.make(system, alive, linkOpen, pairs, t, y, ledger.gasBalance(y, lost)));
   }
 
   function step(): void {
@@ -310,7 +151,7 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
       return;
     }
     if (outcome.kind === 'failed') {
-      const node = nameOf(Math.min(Math.floor(outcome.worst / species), build.network.nodes.count - 1));
+      const node = nameOf(build, Math.min(Math.floor(outcome.worst / species), build.network.nodes.count - 1));
       const why =
         outcome.reason === 'not-finite'
           ? 'its state has no meaning in the laws it was given'
@@ -325,8 +166,8 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     }
     const end = stepper.time;
     // A step with company has its end looked at already.
-    standing = carried ? end : NaN;
-    const fallen = firstFall(t, end);
+    inside.standing = carried ? end : NaN;
+    const fallen = firstFall(build, inside, t, end, vanishRadius);
     const losses = carried ? carried.losses() : [];
     let stopAt = fallen ? fallen.time : end;
     let enough = false;
@@ -338,166 +179,27 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
       }
     }
     tellOf(t, stopAt, losses);
-    const framed = takeFrames(stopAt, (at) => {
-      stepper.interpolate(at, work);
-      carried?.complete(at, work);
-      return work;
-    });
-    if (framed) resumeActive();
+    if (takeFrames(stopAt, (at) => inside.read(at))) inside.resumeActive();
     if (stopAt < end || fallen) breakOff(stopAt, fallen, losses, enough);
     else settle(losses, enough);
-  }
-
-  function resumeActive(): void {
-    const { carried, system, alive } = build;
-    if (carried === null) return;
-    const active = alive.slice();
-    for (const i of carried.members) active[i] = 0;
-    setActiveBubbles(system.state, active);
-  }
-
-  interface Fall {
-    readonly node: number;
-    readonly time: number;
-    readonly kind: 'vanished' | 'flat';
-  }
-
-  /** How far bubble i is from its end: from the vanish radius of a free sphere, from flatness of a cap; relative. */
-  function room(i: number): number {
-    const { nodes } = build.network;
-    const { state } = build.system;
-    const mouth = nodes.mouth[i]!;
-    return mouth > 0 ? state.size[i]! / (FLATTEST * mouth) - 1 : state.size[i]! / vanishRadius - 1;
-  }
-
-  /** The first bubble of the main system that vanishes, or is drawn flat, inside the step. */
-  function firstFall(t: number, end: number): Fall | null {
-    const { system } = build;
-    // Bubbles that are carried apart end by themselves; of the rest, one look at the end of the step.
-    if (!lookAt(end)) {
-      // The end of the step lies beyond a bubble's end: bring the end nearer until every bubble has a state.
-      let [low, high] = [t, end];
-      while (high - low > 1e-12 * Math.max(end, 1e-300) && high - low > (end - t) * 1e-9) {
-        const middle = 0.5 * (low + high);
-        if (lookAt(middle)) low = middle;
-        else high = middle;
-      }
-      if (!lookAt(low)) return null;
-      end = low;
-    }
-    let first: Fall | null = null;
-    const { state } = system;
-    for (let list = 0; list < 2; list++) {
-      const [index, count] = list === 0 ? [state.spheres, state.sphereCount] : [state.shaped, state.shapedCount];
-      for (let q = 0; q < count; q++) {
-        const i = index[q]!;
-        if (room(i) > 0) continue;
-        const until = first ? first.time : end;
-        const at = (when: number): number => (lookAtNodes(when, [i]) ? room(i) : -1);
-        const time = passage(t, at(t), until, at(until), [i], () => room(i));
-        if (first === null || time < first.time) {
-          first = { node: i, time, kind: build.network.nodes.mouth[i]! > 0 ? 'flat' : 'vanished' };
-        }
-      }
-    }
-    return first;
-  }
-
-  /** As `lookAt`, for a few nodes and what they reach into alone: cheap, however large the network. */
-  function lookAtNodes(t: number, few: readonly number[]): boolean {
-    const { stepper, system, observation, carried } = build;
-    const { state } = system;
-    standing = NaN;
-    const [spheres, shaped] = [state.sphereCount, state.shapedCount];
-    const firstSpheres = state.spheres.slice(0, few.length);
-    const firstShaped = state.shaped.slice(0, few.length);
-    state.sphereCount = state.shapedCount = 0;
-    for (const i of few) {
-      if (i >= build.network.nodes.bubbleCount) continue;
-      activateBubble(state, i);
-      if (carried?.isMember(i) === true) carried.completeOne(t, i, work);
-      else for (let k = 0; k < species; k++) work[i * species + k] = stepper.interpolateOne(t, i * species + k);
-    }
-    for (const i of state.rigid) {
-      for (let k = 0; k < species; k++) work[i * species + k] = stepper.interpolateOne(t, i * species + k);
-    }
-    const found = system.evaluate(t, work, observation.needsSlopes);
-    state.spheres.set(firstSpheres);
-    state.shaped.set(firstShaped);
-    state.sphereCount = spheres;
-    state.shapedCount = shaped;
-    return found;
-  }
-
-  /** The instant in (a, b] at which a quantity of the state of some nodes, fa at a and fb at b, passes zero. */
-  function passage(
-    a: number,
-    fa: number,
-    b: number,
-    fb: number,
-    nodes: readonly number[],
-    quantity: (t: number) => number,
-  ): number {
-    const at = (t: number): number => (lookAtNodes(t, nodes) ? quantity(t) : -1);
-    return findPassage(at, a, fa, b, fb, Math.max(4e-16 * b, 1e-3 * tolerance * (b - a)));
   }
 
   /** Emits what happens in (t, stopAt], in time order. */
   function tellOf(t: number, stopAt: number, losses: readonly { node: number; time: number; amount: number }[]): void {
     const events: RunEvent[] = [];
     for (const { node, time, amount } of losses) {
-      if (time <= stopAt) events.push(vanished(node, time, amount, null));
+      if (time <= stopAt) events.push(vanishedEvent(build, node, time, amount, null));
     }
-    events.push(...build.observation.passages(t, stopAt, lookAt, passage, lookAtNodes, memory));
+    events.push(...build.observation.passages(t, stopAt, inside, memory));
     events.sort((a, b) => a.time - b.time);
     emitAll(events);
-  }
-
-  function vanished(node: number, time: number, amount: number, receivers: readonly number[] | null): RunEvent {
-    const names = (receivers ?? openEnds(node)).map(nameOf);
-    const detail =
-      names.length === 0
-        ? 'no neighbour was left to take its gas: it left the network'
-        : `its last gas went to ${names.length > 6 ? `${names.slice(0, 6).join(', ')} and ${names.length - 6} more` : names.join(', ')}`;
-    return {
-      time,
-      event: 'bubble-vanished',
-      subject: nameOf(node),
-      partner: '',
-      link: '',
-      value: amount,
-      unit: 'mol',
-      detail,
-    };
-  }
-
-  function openEnds(node: number): number[] {
-    const { adjacency, alive, linkOpen } = build;
-    const ends: number[] = [];
-    for (let e = adjacency.start[node]!; e < adjacency.start[node + 1]!; e++) {
-      const other = adjacency.other[e]!;
-      if (alive[other] !== 0 && linkOpen[adjacency.group[e]!]![adjacency.link[e]!] !== 0) ends.push(other);
-    }
-    return ends;
-  }
-
-  function bury(node: number): void {
-    const { alive, adjacency, linkAlive, linkOpen, network } = build;
-    alive[node] = 0;
-    build.bubbles--;
-    build.gone++;
-    surfactantLeft += network.nodes.faces[node]! * network.nodes.surfactant[node]!;
-    for (let e = adjacency.start[node]!; e < adjacency.start[node + 1]!; e++) {
-      linkAlive[adjacency.group[e]!]![adjacency.link[e]!] = 0;
-      linkOpen[adjacency.group[e]!]![adjacency.link[e]!] = 0;
-    }
   }
 
   /** The step stands whole: hand over, settle accounts, go on. */
   function settle(losses: readonly { node: number; time: number }[], enough: boolean): void {
     const { stepper, carried } = build;
     if (carried) carried.commit(stepper.time, stepper.state, (unknown, delta) => stepper.adjust(unknown, delta));
-    for (const { node } of losses) bury(node);
+    for (const { node } of losses) bury(build, node);
     carryOn(enough);
   }
 
@@ -509,15 +211,13 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     enough: boolean,
   ): void {
     const { stepper, carried } = build;
-    stepper.interpolate(at, work);
-    carried?.complete(at, work);
-    const y = work.slice();
-    standing = NaN;
+    const y = inside.read(at).slice();
+    inside.standing = NaN;
     if (carried) carried.cutShort();
-    for (const { node, time } of losses) if (time <= at) bury(node);
+    for (const { node, time } of losses) if (time <= at) bury(build, node);
     if (fallen?.kind === 'flat') {
       stepper.restart(at, y, stepper.nextStep);
-      const node = nameOf(fallen.node);
+      const node = nameOf(build, fallen.node);
       finish({
         kind: 'failed',
         node,
@@ -530,16 +230,19 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     if (fallen) {
       const { adjacency, alive, linkOpen } = build;
       const { amount, receivers } = handOver(fallen.node, y, species, adjacency, alive, linkOpen, ledger.dropped);
-      emit(vanished(fallen.node, at, amount, receivers));
+      emit(vanishedEvent(build, fallen.node, at, amount, receivers));
       if (settings.onVanish === 'join-neighbours') {
         network = joinNeighbours(network, fallen.node, adjacency, alive, linkOpen);
       }
-      bury(fallen.node);
+      bury(build, fallen.node);
     }
     if (settings.untilBubbles !== null && build.bubbles <= settings.untilBubbles) enough = true;
     stepper.restart(at, y, 0.1 * (stepper.time - stepper.previousTime));
     build.system.setActive(build.alive, build.linkOpen);
-    if (network !== build.network) rebuild(network, true);
+    if (network !== build.network) {
+      remake(rebuild(plan, build, network, true));
+      takeStock(at, true);
+    }
     carryOn(enough);
   }
 
@@ -554,13 +257,15 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
       return;
     }
     if (build.gone > GONE_SHARE * network.nodes.bubbleCount && network.nodes.bubbleCount > 64) {
-      rebuild(network, false);
+      remake(rebuild(plan, build, network, false));
+      // What is only smaller has no pair that was not there before.
+      takeStock(t, false);
     }
     if (t >= valveMove) moveValves(t);
     else if (t >= build.system.segmentEnd) build.stepper.invalidate();
     // A search for an instant leaves what it looked at there: bubbles that were carried too.
-    if (standing !== t) setActiveBubbles(build.system.state, build.alive);
-    if (standing !== t && !evaluate(t, build.stepper.state)) {
+    if (inside.standing !== t) setActiveBubbles(build.system.state, build.alive);
+    if (inside.standing !== t && !build.system.evaluate(t, build.stepper.state, build.observation.needsSlopes)) {
       finish({
         kind: 'failed',
         node: '',
@@ -573,32 +278,30 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
   }
 
   function moveValves(t: number): void {
-    const { network, linkAlive, linkOpen, stepper, pairs, system, alive } = build;
+    const { network, linkAlive, linkOpen, stepper, system, alive } = build;
     valveMove = nextValveMove(network, t);
     network.links.forEach((table, g) => {
       for (let l = 0; l < table.count; l++) {
         if (linkAlive[g]![l] === 0 || table.open[l] === null) continue;
-        const open = isValveOpen(table, l, t) ? 1 : 0;
-        if (open === linkOpen[g]![l]) continue;
-        linkOpen[g]![l] = open;
+        const opens = isValveOpen(table, l, t);
+        if (opens === (linkOpen[g]![l] === 1)) continue;
+        linkOpen[g]![l] = opens ? 1 : 0;
         emit({
           time: t,
-          event: open === 1 ? 'valve-opened' : 'valve-shut',
-          subject: nameOf(table.from[l]!),
-          partner: nameOf(table.to[l]!),
+          event: opens ? 'valve-opened' : 'valve-shut',
+          subject: nameOf(build, table.from[l]!),
+          partner: nameOf(build, table.to[l]!),
           link: network.linkName(table.origin[l]!),
           value: NaN,
           unit: '',
-          detail: open === 1 ? 'gas can pass from here on' : 'no gas passes from here on',
+          detail: opens ? 'gas can pass from here on' : 'no gas passes from here on',
         });
       }
     });
     system.setActive(alive, linkOpen);
     build.carried?.restart();
     stepper.restart(t, stepper.state.slice(), 0);
-    evaluate(t, stepper.state);
-    pairs.refresh(system.state, t);
-    emitAll(build.observation.opening(t, memory, true));
+    takeStock(t, true);
   }
 
   /** The explicit method met stiffness: nothing of the step is kept, and the stiff method goes on from its start. */
@@ -619,8 +322,8 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
       `from ${instant(t)} on the stiff method did the run: the network had turned stiff (it adjusts within ${time} s)`,
     );
     countSteps();
-    method = { name: 'stiff', carries: method!.carries };
-    build.stepper = createStepper(method, build.system, until, build.carried);
+    build.method = { name: 'stiff', carries: build.method.carries };
+    build.stepper = createStepper(build.method, build.system, until, build.carried);
     build.stepper.restart(t, stepper.state.slice(), 0);
   }
 
@@ -673,9 +376,9 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
       const { system, stepper, alive } = build;
       setActiveBubbles(system.state, alive);
       if (t >= stepper.time) system.evaluate(stepper.time, stepper.state, false);
-      else lookAt(t);
+      else inside.lookAt(t);
       const radii = system.state.radius.filter((_, i) => i < build.network.nodes.bubbleCount && alive[i] !== 0);
-      resumeActive();
+      inside.resumeActive();
       return radii;
     },
     result() {
@@ -683,7 +386,7 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
       return {
         stop,
         endTime: build.stepper.time,
-        method: method!.name,
+        method: build.method.name,
         ...statistics,
         eventCounts,
         worstGasBalance: ledger.worst,

@@ -7,7 +7,7 @@ import { BUBBLE } from '../network/network.ts';
 import { faceArea } from '../network/geometry.ts';
 import { WATCHES } from './events/register.ts';
 import type { RunEvent } from './record.ts';
-import type { Watch, WatchContext } from './watch.ts';
+import type { Looking, Watch, WatchContext } from './watch.ts';
 
 /** What was seen and told so far, by watch and key: it outlives the watches, which are remade with the network. */
 export interface Memory {
@@ -30,24 +30,9 @@ export interface Observation {
   opening(t: number, memory: Memory, fresh: boolean): RunEvent[];
   /**
    * Passages inside (from, to], unordered.
-   * @param lookAt puts the node states to an instant of the step
-   * @param passage finds where a quantity of the state of some nodes passes zero between two instants with known values
+   * @param inside looks at any instant of the step
    */
-  passages(
-    from: number,
-    to: number,
-    lookAt: (t: number) => boolean,
-    passage: (
-      a: number,
-      fa: number,
-      b: number,
-      fb: number,
-      nodes: readonly number[],
-      quantity: (t: number) => number,
-    ) => number,
-    lookAtNodes: (t: number, nodes: readonly number[]) => boolean,
-    memory: Memory,
-  ): RunEvent[];
+  passages(from: number, to: number, inside: Looking, memory: Memory): RunEvent[];
   /** Takes the present node states as the start of the next step. */
   remember(t: number): void;
   /** Surfactant that the faces and film liquids of all living bubbles hold by their present state, mol. */
@@ -133,19 +118,19 @@ export function createObservation(context: WatchContext): Observation {
       return events;
     },
 
-    passages(from, to, lookAt, passage, lookAtNodes, memory) {
+    passages(from, to, inside, memory) {
       if (total === 0) return [];
       const found: RunEvent[] = [];
-      if (!lookAt(to)) return [];
+      if (!inside.lookAt(to)) return [];
       evaluateAll(to, afterViews);
-      const inside = looksInside && lookAt(0.5 * (from + to));
-      if (inside) evaluateAll(0.5 * (from + to), middleViews);
+      const halfway = looksInside && inside.lookAt(0.5 * (from + to));
+      if (halfway) evaluateAll(0.5 * (from + to), middleViews);
       const search = (w: number, k: number, a: number, fa: number, b: number, fb: number): void => {
         if (Number.isNaN(fa) || Number.isNaN(fb) || fa >= 0 === fb >= 0) return;
         const watch = watches[w]!;
         const nodes = watch.touches(k);
-        const time = passage(a, fa, b, fb, nodes, (t) => watch.value(k, t));
-        lookAtNodes(time, nodes);
+        const time = inside.passage(a, fa, b, fb, nodes, (t) => watch.value(k, t));
+        inside.lookAtNodes(time, nodes);
         memory.signs[kinds[w]!]!.set(watch.key(k), fb >= 0);
         const event = tell(w, k, time, fb >= 0, false, memory);
         if (event) found.push(event);
@@ -154,7 +139,7 @@ export function createObservation(context: WatchContext): Observation {
         for (let k = 0; k < watches[w]!.count; k++) {
           const fa = beforeViews[w]![k]!;
           const fb = afterViews[w]![k]!;
-          if (inside) {
+          if (halfway) {
             const fm = middleViews[w]![k]!;
             search(w, k, from, fa, 0.5 * (from + to), fm);
             search(w, k, 0.5 * (from + to), fm, to, fb);

@@ -2,6 +2,8 @@
  * What becomes of a vanished bubble's gas and links: the gas goes in equal parts to what its open links lead to, its links go,
  * and where the user asked for it its neighbours are joined.
  */
+import { nameOf, type Build } from './build.ts';
+import type { RunEvent } from './record.ts';
 import { BUBBLE, type LinkTable, type Network } from '../network/network.ts';
 import { GAS_CONSTANT } from '../quantities/constants.ts';
 import { TUBE } from '../transfer/tube.ts';
@@ -153,4 +155,40 @@ function joined(network: Network, table: LinkTable, a: Float64Array, b: Float64A
       return a.map((value, k) => (k < species ? value : value + b[k]!));
     }
   }
+}
+
+/** @param receivers whom its gas went to; null: all that its open links lead to */
+export function vanishedEvent(
+  build: Build,
+  node: number,
+  time: number,
+  amount: number,
+  receivers: readonly number[] | null,
+): RunEvent {
+  const names = (receivers ?? openEnds(build, node)).map((i) => nameOf(build, i));
+  const detail =
+    names.length === 0
+      ? 'no neighbour was left to take its gas: it left the network'
+      : `its last gas went to ${names.length > 6 ? `${names.slice(0, 6).join(', ')} and ${names.length - 6} more` : names.join(', ')}`;
+  return {
+    time,
+    event: 'bubble-vanished',
+    subject: nameOf(build, node),
+    partner: '',
+    link: '',
+    value: amount,
+    unit: 'mol',
+    detail,
+  };
+}
+
+/** Nodes at the far ends of a node's open links. */
+function openEnds(build: Build, node: number): number[] {
+  const { adjacency, alive, linkOpen } = build;
+  const ends: number[] = [];
+  for (let e = adjacency.start[node]!; e < adjacency.start[node + 1]!; e++) {
+    const other = adjacency.other[e]!;
+    if (alive[other] !== 0 && linkOpen[adjacency.group[e]!]![adjacency.link[e]!] !== 0) ends.push(other);
+  }
+  return ends;
 }

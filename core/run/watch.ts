@@ -55,3 +55,20 @@ export type WatchMaker = (context: WatchContext) => Watch | null;
 export function happening(event: EventName, subject: string, rest: Partial<Happening>): Happening {
   return { event, subject, partner: '', link: '', value: NaN, unit: '', detail: '', ...rest };
 }
+
+/** What a search for the instant of a happening needs: the network at any instant of the last step. */
+export interface Looking {
+  /** Puts node states to time t inside the last step; false where there is none. */
+  lookAt(t: number): boolean;
+  /** As `lookAt`, for a few nodes and the rigid ones alone: cheap, however large the network. */
+  lookAtNodes(t: number, few: readonly number[]): boolean;
+  /** The instant in (a, b] at which a quantity of the state of some nodes, fa at a and fb at b, passes zero. */
+  passage(
+    a: number,
+    fa: number,
+    b: number,
+    fb: number,
+    nodes: readonly number[],
+    quantity: (t: number) => number,
+  ): number;
+}

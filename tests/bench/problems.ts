@@ -2,7 +2,7 @@
  * The benchmark problems, as networks for the general driver: pool-N, contacts-M, cycle-B. SI units.
  * Their check values were made by independent solvers at tight tolerance; a run counts only as accurate as it comes near them.
  */
-import type { Start } from '../../core/run/engine.ts';
+import type { Start } from '../../core/run/build.ts';
 import { createFilm } from '../../core/films/create.ts';
 import { capHeight, faceArea } from '../../core/network/geometry.ts';
 import {
