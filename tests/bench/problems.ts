@@ -23,6 +23,8 @@ import type { Film } from '../../core/films/film.ts';
 const TEMPERATURE = 298.15;
 const AMBIENT = 101325;
 const RT = GAS_CONSTANT * TEMPERATURE;
+/** Of the pure liquid of the problems, N/m. */
+const TENSION = 0.03;
 
 export interface Problem {
   readonly name: string;
@@ -111,7 +113,7 @@ function bubbleAmounts(net: Network, sizes: Float64Array): Float64Array {
 
 const pureLiquid = (): Film =>
   createFilm(
-    { tension: { law: 'constant', clean: 0.03 }, loading: null, supply: { kind: 'none' }, micelles: null },
+    { tension: { law: 'constant', clean: TENSION }, loading: null, supply: { kind: 'none' }, micelles: null },
     TEMPERATURE,
   );
 
@@ -122,7 +124,7 @@ function sizesOf(count: number, total: number, size: (g: number) => number): Flo
   return sizes;
 }
 
-const settings = (
+export const settings = (
   until: number,
   untilBubbles: number | null,
   tolerance: number,
@@ -137,12 +139,15 @@ const settings = (
   onVanish: 'drop',
 });
 
-/** Every bubble exchanges one gas with one pool by an interface-limited law: a film of four times the section, the whole sphere. */
-export function poolProblem(N: number, tolerance: number): Problem {
+/**
+ * Bubbles that exchange one gas with one pool by an interface-limited law, K mol/(m^2 s Pa) over the whole sphere (a film of four
+ * times the section). The pool holds a thousandth of the bubbles' gas and starts in balance with a bubble of radius R_21.
+ * @param radii m, the pool's place (the last) left zero
+ */
+export function poolStart(radii: Float64Array, K: number): Start {
   const film = pureLiquid();
-  const sizes = sizesOf(N, N + 1, (g) => 50e-6 * Math.exp(0.3 * g));
-  const nodes = nodeTable({ count: N + 1, bubbleCount: N, kinds: [POOL], faces: 1, mouth: 0, sizes }, film);
-  const K = 1e-9;
+  const N = radii.length - 1;
+  const nodes = nodeTable({ count: N + 1, bubbleCount: N, kinds: [POOL], faces: 1, mouth: 0, sizes: radii }, film);
   const links: LinkTable = {
     kind: 'film-share',
     count: N,
@@ -156,17 +161,25 @@ export function poolProblem(N: number, tolerance: number): Problem {
     extent: new Float64Array(N).fill(4),
   };
   const net = network(nodes, film, [links], 1.85e-5);
-  const amounts = bubbleAmounts(net, sizes);
+  const amounts = bubbleAmounts(net, radii);
   let total = 0;
   let r = 0;
   let rr = 0;
   for (let i = 0; i < N; i++) {
     total += amounts[i]!;
-    r += sizes[i]!;
-    rr += sizes[i]! ** 2;
+    r += radii[i]!;
+    rr += radii[i]! ** 2;
   }
   nodes.capacity[N] = (1e-3 * total) / AMBIENT;
-  amounts[N] = nodes.capacity[N] * (AMBIENT + (2 * 0.03) / (rr / r));
+  amounts[N] = nodes.capacity[N] * (AMBIENT + (2 * TENSION) / (rr / r));
+  return { network: net, amounts, sizes: radii, pressureSignal: (2 * TENSION * r) / rr };
+}
+
+export function poolProblem(N: number, tolerance: number): Problem {
+  const start = poolStart(
+    sizesOf(N, N + 1, (g) => 50e-6 * Math.exp(0.3 * g)),
+    1e-9,
+  );
   const checks: Record<number, { endTime: number; R21: number }> = {
     1000: { endTime: 10993.017, R21: 1.26411e-4 },
     10000: { endTime: 11537.66, R21: 1.25854e-4 },
@@ -174,7 +187,7 @@ export function poolProblem(N: number, tolerance: number): Problem {
   };
   return {
     name: `pool-${N}`,
-    start: { network: net, amounts, sizes, pressureSignal: (2 * 0.03) / 50e-6 },
+    start: { ...start, pressureSignal: (2 * TENSION) / 50e-6 },
     settings: settings(1e5, N / 10, tolerance, 2e-6),
     check: checks[N] ?? { endTime: NaN, R21: NaN },
   };
@@ -223,7 +236,7 @@ export function contactsProblem(M: number, tolerance: number): Problem {
   };
   return {
     name: `contacts-${M}`,
-    start: { network: net, amounts: bubbleAmounts(net, sizes), sizes, pressureSignal: (2 * 0.03) / 50e-6 },
+    start: { network: net, amounts: bubbleAmounts(net, sizes), sizes, pressureSignal: (2 * TENSION) / 50e-6 },
     settings: settings(1e5, N - Math.ceil(N / 2), tolerance, 2e-6),
     check: checks[M] ?? { endTime: NaN, R21: NaN },
   };
