@@ -4,7 +4,7 @@
  */
 import { createExplicit } from './explicit.ts';
 import { createExtrapolation } from './extrapolation.ts';
-import type { Companion, OwnedStepper } from './owned-stepper.ts';
+import type { Companion, ErrorNorm, OwnedStepper } from './owned-stepper.ts';
 import { createRosenbrock } from './rosenbrock.ts';
 import type { System } from './system.ts';
 
@@ -43,13 +43,21 @@ export function chooseMethod(
   return { name: efoldings <= FEW_EFOLDINGS && system.size <= LARGEST_EXTRAPOLATED ? 'explicit' : 'stiff', carries };
 }
 
+/** Up to this size every unknown is somebody's, and errs by no more than the tolerance; in a crowd it is their mean that counts. */
+const LARGEST_SINGLE_OUT = 300;
+
+/** How the errors of a run that begins with `size` unknowns become one number; it stays so to its end. */
+export function errorNorm(size: number): ErrorNorm {
+  return size > LARGEST_SINGLE_OUT ? 'rms' : 'max';
+}
+
 export function createStepper(
   method: Method,
   system: System,
   until: number,
+  norm: ErrorNorm,
   companion: Companion | null,
 ): OwnedStepper {
-  const norm = system.size > 64 ? 'rms' : 'max';
   switch (method.name) {
     case 'stiff':
       return createRosenbrock(system, { norm, companion });

@@ -22,12 +22,14 @@ export interface Companion {
   error(t: number, h: number, candidate: Float64Array): number;
 }
 
+/**
+ * How the errors e_i / scale_i become one number: their root mean square over the unknowns that are controlled
+ * (whose scale is finite), or the largest.
+ */
+export type ErrorNorm = 'rms' | 'max';
+
 export interface StepperOptions {
-  /**
-   * How the errors e_i / scale_i become one number: their root mean square over the unknowns that are controlled
-   * (whose scale is finite), or the largest.
-   */
-  readonly norm: 'rms' | 'max';
+  readonly norm: ErrorNorm;
   /** What moves along inside each step, if anything does. */
   readonly companion: Companion | null;
 }

@@ -2,7 +2,7 @@
  * Everything of a run that is made anew when the network changes its shape: system, pairs, watches, dying bubbles, stepper.
  */
 import { chooseMethod, createStepper, type Method } from '../integrate/choose.ts';
-import type { OwnedStepper } from '../integrate/owned-stepper.ts';
+import type { ErrorNorm, OwnedStepper } from '../integrate/owned-stepper.ts';
 import type { Network } from '../network/network.ts';
 import { subsetNetwork } from '../network/subset.ts';
 import type { Waveform } from '../network/waveform.ts';
@@ -33,6 +33,7 @@ export interface Start {
 export interface BuildPlan {
   readonly settings: RunSettings;
   readonly pressureSignal: number;
+  readonly norm: ErrorNorm;
   /** Receives gas that had no neighbour to go to, mol a species. */
   readonly dropped: Float64Array;
 }
@@ -97,20 +98,10 @@ export function construct(plan: BuildPlan, from: Beginning): Build {
   // Once a run carries its dying bubbles apart it goes on to do so: the methods differ in when they look, not in what they find.
   const carries = from.method?.carries ?? carriesApart(candidates, alive);
   const carried = carries
-    ? createCarried(
-        system,
-        adjacency,
-        alive,
-        linkOpen,
-        candidates,
-        vanishRadius,
-        tolerance,
-        plan.dropped,
-        observation.needsSlopes,
-      )
+    ? createCarried(system, adjacency, alive, linkOpen, candidates, vanishRadius, tolerance, plan.norm, plan.dropped)
     : null;
   const method = from.method ?? chooseMethod(system, amounts, until, plan.settings.method, carries);
-  const stepper = createStepper(method, system, until, carried);
+  const stepper = createStepper(method, system, until, plan.norm, carried);
   stepper.restart(t, amounts, from.step);
   let bubbles = 0;
   for (let i = 0; i < network.nodes.bubbleCount; i++) bubbles += alive[i]!;

@@ -6,7 +6,7 @@
  * this set, handed to the step control, and is moved at the step's end, so that no gas is lost.
  */
 import { waveformValue } from '../network/waveform.ts';
-import type { Companion } from '../integrate/owned-stepper.ts';
+import type { Companion, ErrorNorm } from '../integrate/owned-stepper.ts';
 import type { Adjacency } from './adjacency.ts';
 import { createCluster } from './cluster.ts';
 import { createClusterList } from './cluster-list.ts';
@@ -15,12 +15,6 @@ import { addSource, type NetworkSystem } from './system.ts';
 
 /** A bubble is carried once its remaining life is shorter than this many steps. */
 const LIFE_IN_STEPS = 4;
-/**
- * Misplaced gas is put right at the end of the step. Who receives it lives at least LIFE_IN_STEPS steps, so what it did meanwhile
- * with gas that was not there is at most about this share of it.
- */
-const LATE_SHARE = 1 / LIFE_IN_STEPS;
-
 /** Mark of a bubble that has been selected and not yet grouped. */
 const WAITING = -2;
 
@@ -67,7 +61,7 @@ export interface Carried extends Companion {
  * @param alive one entry a node: 0 once it has vanished
  * @param linkOpen one array a group: 1 where the link is alive and its valve open
  * @param candidates one entry a node: 1 for free spheres whose links are all diffusive
- * @param withSlopes whether node states at a step's end are wanted with slopes
+ * @param norm of the errors of single bubbles, the main system's
  * @param dropped receives gas that had no neighbour to go to, mol per species
  */
 export function createCarried(
@@ -78,8 +72,8 @@ export function createCarried(
   candidates: Uint8Array,
   vanishRadius: number,
   tolerance: number,
+  norm: ErrorNorm,
   dropped: Float64Array,
-  withSlopes: boolean,
 ): Carried {
   const { network, state } = system;
   const { nodes } = network;
@@ -104,6 +98,8 @@ export function createCarried(
   let stepLength = 0;
   const scratch = new Float64Array(system.size);
   const misplaced = new Float64Array(system.size); // zero between uses
+  const untimely = new Float64Array(system.size); // zero between uses
+  const conductances = new Float64Array(species);
   const scale = new Float64Array(system.size);
   const found: number[] = []; // selected, before they are grouped
   const group: number[] = [];
@@ -203,7 +199,47 @@ export function createCarried(
       for (let k = 0; k < species; k++) scratch[i * species + k] = amount[q * species + k]!;
       activateBubble(state, i);
     }
-    if (!system.evaluate(t, scratch, withSlopes)) throw new Error('a dying bubble has no state at the end of a step');
+    if (!system.evaluate(t, scratch, true)) throw new Error('a dying bubble has no state at the end of a step');
+  }
+
+  /**
+   * Gas that for a part of the step was not where it belonged, against what its receiver may err by. Its total is put right at the end
+   * of the step; what remains is what the receiver did meanwhile without it: the share h lambda, lambda being how fast its own rate
+   * answers to its amount. A pool's receivers are all the bubbles on it; of its sources only the totals count, for it keeps nothing.
+   * The norm is the main system's. Node states are those of the step's end.
+   */
+  function errorOfPlacing(t: number, h: number): number {
+    let ofBubbles = 0;
+    let ofAll = 0;
+    for (let q = 0; q < list.flows; q++) {
+      const u = list.receiver[q]!;
+      const amount = Math.abs(misplaced[u]!) + (u < bubbleUnknowns ? untimely[u]! : 0);
+      misplaced[u] = untimely[u] = 0;
+      if (amount === 0) continue;
+      if (u < bubbleUnknowns) {
+        const e = (Math.min(1, h * answer(Math.floor(u / species), t)) * amount) / scale[u]!;
+        ofBubbles = norm === 'max' ? Math.max(ofBubbles, e * e) : ofBubbles + (e * e) / bubbleUnknowns;
+      } else {
+        const e = amount / (LIFE_IN_STEPS * tolerance * totalAmount);
+        ofAll += e * e;
+      }
+    }
+    return Math.sqrt(ofBubbles + ofAll);
+  }
+
+  /** How fast the rate of a bubble's amount answers to its amount, 1/s: its links' conductances times its stiffness. */
+  function answer(i: number, t: number): number {
+    let sum = 0;
+    for (let e = adjacency.start[i]!; e < adjacency.start[i + 1]!; e++) {
+      const g = adjacency.group[e]!;
+      if (linkOpen[g]![adjacency.link[e]!] === 0) continue;
+      const { group, kernel } = system.groups[g]!;
+      kernel.conductance(group, adjacency.link[e]!, state, t, conductances);
+      let largest = 0;
+      for (let k = 0; k < species; k++) largest = Math.max(largest, conductances[k]!);
+      sum += largest;
+    }
+    return sum * Math.abs(state.stiffness[i]!);
   }
 
   return {
@@ -249,33 +285,20 @@ export function createCarried(
     },
 
     error(t, h, candidate) {
-      if (!system.evaluate(t + h, candidate, withSlopes)) return Infinity;
+      if (!system.evaluate(t + h, candidate, true)) return Infinity;
       next.partial.set(state.partial);
       next.radius.set(state.radius);
       known.pastStep = pastStep;
       known.step = h;
-      // Gas misplaced for one step, against what its receiver holds; a pool's receivers are all the bubbles on it. As for the
-      // main system it is the root mean square over the bubbles that counts.
-      let ofBubbles = 0;
-      let ofAll = 0;
       for (let c = 0; c < list.count; c++) {
         take(c);
         cluster.integrate(t, h, ambient, known);
-        list.correct(c, cluster, misplaced);
+        list.correct(c, cluster, misplaced, untimely);
       }
-      for (let q = 0; q < list.flows; q++) {
-        const u = list.receiver[q]!;
-        if (misplaced[u] === 0) continue;
-        const holds = u < bubbleUnknowns ? scale[u]! : tolerance * totalAmount;
-        const e = (LATE_SHARE * misplaced[u]!) / holds;
-        misplaced[u] = 0;
-        if (u < bubbleUnknowns) ofBubbles += e * e;
-        else ofAll += e * e;
-      }
-      const error = Math.sqrt(ofBubbles / bubbleUnknowns + ofAll);
       // The clusters wrote their neighbours' courses into the node state: put the end of the step back.
       state.partial.set(next.partial);
       state.radius.set(next.radius);
+      const error = errorOfPlacing(t, h);
       if (error <= 1) {
         showEnd(t + h, candidate);
         setActiveBubbles(state, active);

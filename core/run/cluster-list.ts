@@ -28,8 +28,11 @@ export interface ClusterList {
   readGroup(c: number, out: number[]): void;
   /** Takes what the worker found of cluster c, and adds its flows to the sources, as quadratics over [0, h] with the same total. */
   fit(c: number, found: Cluster, h: number, sources: SourceTerms): void;
-  /** Takes what the worker found of cluster c between neighbours that are known now; adds (moved - foreseen) to `misplaced`. */
-  correct(c: number, found: Cluster, misplaced: Float64Array): void;
+  /**
+   * Takes what the worker found of cluster c between neighbours that are known now. Adds (moved - foreseen) to `misplaced`, and to
+   * `untimely` the most that each source was ahead or behind on the way, both per unknown, mol.
+   */
+  correct(c: number, found: Cluster, misplaced: Float64Array, untimely: Float64Array): void;
   /**
    * Cluster c in the whole state at tau: its bubbles' amounts there, and its gas on its way in the receivers, whose state
    * so far holds what the fitted sources brought.
@@ -52,6 +55,7 @@ export function createClusterList(species: number): ClusterList {
   const predicted: number[] = [];
   const fitted: number[] = []; // 3 numbers a flow
   const dropped: number[] = [];
+  const deviation: number[] = [];
 
   function keep(c: number, found: Cluster): void {
     const first = memberStart[c]!;
@@ -125,9 +129,14 @@ export function createClusterList(species: number): ClusterList {
       }
     },
 
-    correct(c, found, misplaced) {
+    correct(c, found, misplaced, untimely) {
       keep(c, found);
-      for (let q = flowStart[c]!; q < flowStart[c + 1]!; q++) misplaced[receiver[q]!]! += moved[q]! - predicted[q]!;
+      const base = flowStart[c]!;
+      found.deviations(fitted, 3 * base, deviation);
+      for (let q = 0; q < found.flows; q++) {
+        misplaced[receiver[base + q]!]! += moved[base + q]! - predicted[base + q]!;
+        untimely[receiver[base + q]!]! += deviation[q]!;
+      }
     },
 
     complete(c, tau, amounts, y) {

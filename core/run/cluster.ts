@@ -25,6 +25,11 @@ export interface Cluster {
   readonly moved: readonly number[];
   readonly startFlow: readonly number[];
   readonly endFlow: readonly number[];
+  /**
+   * The largest amount by which what a flow had moved at an instant of the step differs from what its source would have moved, mol;
+   * the source being the quadratic in time with coefficients `fitted`, three a flow.
+   */
+  deviations(fitted: readonly number[], offset: number, out: number[]): void;
   /** The bubbles' amounts at the end, member * species + k. */
   readonly amount: readonly number[];
   /** When each vanished, s after the start (Infinity: it lives), and with how much, mol, member * species + k. */
@@ -75,6 +80,10 @@ export function createCluster(
   const moved: number[] = [];
   const startFlow: number[] = [];
   const endFlow: number[] = [];
+  // What the flows had moved at the ends of the substeps.
+  let marks = 0;
+  const markTime: number[] = [];
+  const markMoved: number[] = [];
   /** s; how long the first member would live at its present pace. */
   let initialLife = 0;
 
@@ -155,9 +164,11 @@ export function createCluster(
       R += step;
       if (R - vanishRadius < 1e-12 * R) R = vanishRadius;
       accept();
+      mark(z[0]);
       step *= norm > 0 ? Math.min(5, 0.9 * Math.pow(norm, -0.2)) : 5;
     }
     if (!lived) {
+      marks = 0;
       trace.clear();
       restart();
       bubbles.rates(0, z, stages[0]!);
@@ -167,6 +178,13 @@ export function createCluster(
     z[0] = vanishArea;
     bubbles.handOver(0, tau, z);
     return true;
+  }
+
+  function mark(tau: number): void {
+    markTime[marks] = tau;
+    const base = marks * outer * species;
+    for (let q = 0; q < outer * species; q++) markMoved[base + q] = z[quadratures + q]!;
+    marks++;
   }
 
   function accept(): void {
@@ -224,6 +242,7 @@ export function createCluster(
       trace.add(tau, end, NaN, step, z, stages, quadratures);
       accept();
       tau = end;
+      mark(tau);
       let handed = false;
       for (let m = 0; m < count; m++) {
         if (goneAt[m] === Infinity && z[m * width]! <= vanishArea * (1 + 1e-8)) {
@@ -268,6 +287,7 @@ export function createCluster(
     integrate(t, h, ambient, surroundings) {
       bubbles.begin(t, ambient, surroundings);
       trace.clear();
+      marks = 0;
       restart();
       bubbles.rates(0, z, stages[0]!);
       for (let q = 0; q < outer * species; q++) startFlow[q] = stages[0]![quadratures + q]!;
@@ -283,6 +303,19 @@ export function createCluster(
         else for (let k = 0; k < species; k++) amount[m * species + k] = 0;
       }
       close();
+    },
+
+    deviations(fitted, offset, out) {
+      for (let q = 0; q < outer * species; q++) {
+        const [a, b, c] = [fitted[offset + 3 * q]!, fitted[offset + 3 * q + 1]!, fitted[offset + 3 * q + 2]!];
+        let worst = 0;
+        for (let mark = 0; mark < marks; mark++) {
+          const tau = markTime[mark]!;
+          const brought = tau * (a + tau * (b / 2 + (tau * c) / 3));
+          worst = Math.max(worst, Math.abs(markMoved[mark * outer * species + q]! - brought));
+        }
+        out[q] = worst;
+      }
     },
 
     amountsAt(tau, out) {

@@ -2,7 +2,7 @@
  * The driver: steps a network from start to end, stands still at everything that happens on the way, and keeps the balance.
  * Observers hear events and frames; what the run did is told by `result`. Pausing (`advance` in slices) changes no number.
  */
-import { createStepper } from '../integrate/choose.ts';
+import { createStepper, errorNorm } from '../integrate/choose.ts';
 import { BUBBLE } from '../network/network.ts';
 import { setActiveBubbles } from '../network/node-state.ts';
 import { bury, construct, nameOf, rebuild, type Build, type Start } from './build.ts';
@@ -52,7 +52,8 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
   let worstSurfactant = 0;
   let stop: RunStop | null = null;
   let nextFrame = 0;
-  const plan = { settings, pressureSignal: start.pressureSignal, dropped: ledger.dropped };
+  const norm = errorNorm(start.amounts.length);
+  const plan = { settings, pressureSignal: start.pressureSignal, norm, dropped: ledger.dropped };
   let build = construct(plan, {
     network: start.network,
     amounts: start.amounts,
@@ -323,7 +324,7 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     );
     countSteps();
     build.method = { name: 'stiff', carries: build.method.carries };
-    build.stepper = createStepper(build.method, build.system, until, build.carried);
+    build.stepper = createStepper(build.method, build.system, until, norm, build.carried);
     build.stepper.restart(t, stepper.state.slice(), 0);
   }
 
