@@ -217,7 +217,12 @@ export function createCluster(
       let norm = attempt(tau, NaN, step);
       while (!(norm <= 1)) {
         step *= norm === Infinity || Number.isNaN(norm) ? 0.3 : Math.max(0.2, 0.9 * Math.pow(norm, -0.2));
-        if (!(step > 1e-14 * h)) throw new Error('a dying bubble could not be followed to its end');
+        if (!(step > 1e-14 * h)) {
+          // Outside the laws, where the neighbours are thought to go: no number may come of it, and the step is made shorter.
+          z.fill(NaN, 0, dimension);
+          stages[0]!.fill(NaN, 0, dimension);
+          return;
+        }
         norm = attempt(tau, NaN, step);
       }
       // Land on the first vanishing inside this substep: secant steps on s(step) - s_v.

@@ -7,7 +7,8 @@ import type { LinkGroup, LinkKernel } from '../transfer/link-kernel.ts';
 
 /**
  * @returns from node states with slopes, the largest sum of sizes in a column of the Jacobian, 1/s, the links' shares of an entry
- * summed without their signs: never less than the true column sum, and for exchange between nodes at most twice the fastest rate
+ * summed without their signs: never less than the true column sum. Where every bubble runs away, or every one pushes back, it is at most
+ * twice the fastest rate; near-neutral mixtures are taken for faster than they are
  */
 export function createColumnSums(
   size: number,

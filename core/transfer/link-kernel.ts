@@ -23,7 +23,7 @@ export interface LinkKernel {
   addSlopes(group: LinkGroup, state: NodeState, t: number, values: Float64Array, timeDerivative: Float64Array): void;
   /** Molar flow of one link, `from` to `to`, per species (mol/s), written to `out`. */
   flow(group: LinkGroup, link: number, state: NodeState, t: number, out: Float64Array): void;
-  /** Molar conductance of one link per species, d(flow)/d(p_from), mol/(s Pa), written to `out`; whole gas in out[0] for a tube. */
+  /** Molar conductance of one link per species, flow per pressure difference, mol/(s Pa), written to `out`; whole gas in out[0] for a tube. */
   conductance(group: LinkGroup, link: number, state: NodeState, t: number, out: Float64Array): void;
   /** True where the link lets each species through by its own partial pressure; false where it carries the gas whole. */
   readonly diffusive: boolean;

@@ -13,7 +13,8 @@ export const betweenBubbles: LinkKernel = diffusiveKernel((table, link, _k, stat
   const Ri = state.radius[table.from[link]!]!;
   const Rj = state.radius[table.to[link]!]!;
   const d = table.coefficients[link * table.stride + state.species]!;
-  const resistance = 1 / Ri + 1 / Rj - 2 / d;
+  // Spheres that have grown into one another have no liquid between them: no number may come of it.
+  const resistance = Ri + Rj < d ? 1 / Ri + 1 / Rj - 2 / d : NaN;
   out[0] = (4 * Math.PI) / resistance;
   out[1] = out[0] / (resistance * Ri * Ri);
   out[2] = out[0] / (resistance * Rj * Rj);
@@ -40,6 +41,7 @@ export const toPool: LinkKernel = diffusiveKernel((table, link, k, state, t, out
   const time = t > earliest ? t : earliest;
   const depth = Math.sqrt(Math.PI * D * time);
   out[0] += (4 * Math.PI * R * R) / depth;
-  out[own] += (8 * Math.PI * R) / depth;
+  // Where time is held, the depth goes with R.
+  out[own] += ((t > earliest ? 8 : 4) * Math.PI * R) / depth;
   out[3] = t > earliest ? (-2 * Math.PI * R * R) / (depth * time) : 0;
 });

@@ -4,7 +4,7 @@
  * Coefficients: C = pi a^4/(16 L R_gas T) (so that n_dot = C (p_i^2 - p_j^2)/mu), a, L, and a viscosity in place of the
  * gas's own (NaN: the gas's).
  */
-import type { LinkTable, Network } from '../network/network.ts';
+import { RESERVOIR, type LinkTable, type Network } from '../network/network.ts';
 import type { NodeState } from '../network/node-state.ts';
 import type { LinkKernel } from './link-kernel.ts';
 import { mixtureViscosity, mixtureViscositySlopes } from './viscosity.ts';
@@ -149,7 +149,7 @@ function upstreamSlope(state: NodeState, up: number, k: number, m: number, mu: n
   const { species, pressure, partialSlope } = state;
   let total = 0;
   for (let s = 0; s < species; s++) total += partialSlope[(up * species + s) * species + m]!;
-  if (total === 0) return 0;
+  if (state.network.nodes.kind[up] === RESERVOIR) return 0;
   // d x_s/d n_m = (d p_s/d n_m - x_s d p/d n_m)/p
   const p = pressure[up]!;
   let own = 0;
