@@ -53,6 +53,16 @@ function evaluateBalance(state: NodeState, film: Film, i: number, P: number, x: 
 }
 
 /**
+ * Whether Newton's method may end with this step: its error then is of the order of the step's square, measured against the size,
+ * or against the room that a film has left to its full coverage, where the balance has a pole. The film is that of `filmOut`.
+ */
+function isLast(step: number, x: number): boolean {
+  const coverage = filmOut[FILM.coverage]!;
+  const room = coverage > 0 ? Math.max(1 - coverage, 1e-12) : 1;
+  return Math.abs(step) < 1e-8 * x * room;
+}
+
+/**
  * Root of F by bisection guarded Newton, for the rare case where plain Newton strays: F rises with x (eps >= 0), is negative
  * at small x or where an insoluble film has no state (NaN), and positive at large x.
  * @returns the size, or NaN where none is found
@@ -68,8 +78,12 @@ function solveSafely(state: NodeState, film: Film, i: number, P: number, nRT: nu
     else low = x;
     const slope = balance[1]! * balance[2]! + balance[0]! * balance[3]!;
     let next = x - F / slope;
-    if (!(next > low && next < high)) next = high === Infinity ? 2 * x : 0.5 * (low + high);
-    if (Math.abs(next - x) <= 2e-16 * x || (high < Infinity && high - low <= 4e-16 * high && low > 0)) return next;
+    // By a full film the balance is so steep that a step says nothing of how far the root is.
+    const stuck = !(Math.abs(F) < 1e-9 * nRT) && Math.abs(next - x) < 1e-6 * x;
+    if (stuck || !(next > low && next < high)) next = high === Infinity ? 2 * x : 0.5 * (low + high);
+    if ((!stuck && Math.abs(next - x) <= 2e-16 * x) || (high < Infinity && high - low <= 4e-16 * high && low > 0)) {
+      return next;
+    }
     x = next;
   }
   return NaN;
@@ -105,20 +119,19 @@ export function evaluateShaped(
     for (let pass = 0; pass < 12; pass++) {
       evaluateBalance(state, film, i, P, x);
       step = (balance[0]! * balance[2]! - nRT) / (balance[1]! * balance[2]! + balance[0]! * balance[3]!);
-      // Newton's error after the step is of the order of its relative square.
-      if (step < 1e-8 * x && step > -1e-8 * x) break;
+      if (isLast(step, x)) break;
       x -= step;
       if (!(x > 0)) {
         step = NaN;
         break;
       }
     }
-    if (!(step < 1e-8 * x && step > -1e-8 * x)) {
+    if (!isLast(step, x)) {
       x = solveSafely(state, film, i, P, nRT, before);
       if (!(x > 0)) return false;
       evaluateBalance(state, film, i, P, x);
       step = (balance[0]! * balance[2]! - nRT) / (balance[1]! * balance[2]! + balance[0]! * balance[3]!);
-      if (!(Math.abs(step) < 1e-8 * x)) return false;
+      if (!isLast(step, x) && !(Math.abs(balance[0]! * balance[2]! - nRT) < 1e-9 * nRT)) return false;
     }
     const slope = balance[1]! * balance[2]! + balance[0]! * balance[3]!; // dF/dx
     x -= step;

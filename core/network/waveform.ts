@@ -146,6 +146,6 @@ export function waveformSwing(wave: Waveform): number {
     case 'pulses':
       return Math.abs(wave.height);
     case 'table':
-      return Math.max(...wave.values) - Math.min(...wave.values);
+      return wave.values.reduce((a, b) => Math.max(a, b)) - wave.values.reduce((a, b) => Math.min(a, b));
   }
 }

@@ -96,7 +96,7 @@ export function construct(plan: BuildPlan, from: Beginning): Build {
   const observation = createObservation({ system, alive, linkOpen, pairs });
   const candidates = carriedCandidates(network);
   // Once a run carries its dying bubbles apart it goes on to do so: the methods differ in when they look, not in what they find.
-  const carries = from.method?.carries ?? carriesApart(candidates, alive);
+  const carries = from.method?.carries ?? carriesApart(candidates, alive, plan.settings.onVanish);
   const carried = carries
     ? createCarried(system, adjacency, alive, linkOpen, candidates, vanishRadius, tolerance, plan.norm, plan.dropped)
     : null;

@@ -1,6 +1,7 @@
 /** Which bubbles may be carried apart when they die: free spheres that gas leaves by diffusion only, in a vessel of constant pressure. */
 import { type Network } from '../network/network.ts';
 import { LINK_KERNELS } from '../transfer/register.ts';
+import type { RunSettings } from './settings.ts';
 
 /** One entry a node: 1 for a candidate. */
 export function carriedCandidates(network: Network): Uint8Array {
@@ -24,8 +25,12 @@ export function carriedCandidates(network: Network): Uint8Array {
 /** Below this many candidates each vanishing is a stop of the main system: exact, and cheap enough. */
 const FEWEST_CARRIED = 24;
 
-/** Whether a run that begins with these candidates, of which those with 1 in `alive` are there, carries its dying bubbles apart. */
-export function carriesApart(candidates: Uint8Array, alive: Uint8Array): boolean {
+/**
+ * Whether a run that begins with these candidates, of which those with 1 in `alive` are there, carries its dying bubbles apart. Where
+ * neighbours are to be joined the network changes with each of them, and each is a stop.
+ */
+export function carriesApart(candidates: Uint8Array, alive: Uint8Array, onVanish: RunSettings['onVanish']): boolean {
+  if (onVanish === 'join-neighbours') return false;
   let count = 0;
   for (let i = 0; i < candidates.length; i++) count += candidates[i]! & alive[i]!;
   return count >= FEWEST_CARRIED;

@@ -191,7 +191,7 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
     for (const { node, time, amount } of losses) {
       if (time <= stopAt) events.push(vanishedEvent(build, node, time, amount, null));
     }
-    events.push(...build.observation.passages(t, stopAt, inside, memory));
+    for (const event of build.observation.passages(t, stopAt, inside, memory)) events.push(event);
     events.sort((a, b) => a.time - b.time);
     emitAll(events);
   }
@@ -257,13 +257,14 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
       finish({ kind: 'done' });
       return;
     }
+    // Valves first: a network made anew has them where they stand, and would tell of none.
+    if (t >= valveMove) moveValves(t);
+    else if (t >= build.system.segmentEnd) build.stepper.invalidate();
     if (build.gone > GONE_SHARE * network.nodes.bubbleCount && network.nodes.bubbleCount > 64) {
       remake(rebuild(plan, build, network, false));
       // What is only smaller has no pair that was not there before.
       takeStock(t, false);
     }
-    if (t >= valveMove) moveValves(t);
-    else if (t >= build.system.segmentEnd) build.stepper.invalidate();
     // A search for an instant leaves what it looked at there: bubbles that were carried too.
     if (inside.standing !== t) setActiveBubbles(build.system.state, build.alive);
     if (inside.standing !== t && !build.system.evaluate(t, build.stepper.state, build.observation.needsSlopes)) {

@@ -50,7 +50,7 @@ export function atRest(scenario: Scenario): RestReport {
   );
   system.setActive(alive, linkOpen);
   const bound = system.rateBound(0, amounts);
-  const carries = carriesApart(carriedCandidates(network), alive);
+  const carries = carriesApart(carriedCandidates(network), alive, scenario.run.onVanish);
   const method = chooseMethod(system, amounts, scenario.run.until, scenario.run.method, carries);
   if (!system.evaluate(0, amounts, true)) throw new Error('a compiled scenario has no state');
   const pairs = createPairs(system, linkOpen, scenario.run.until);

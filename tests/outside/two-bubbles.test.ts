@@ -87,43 +87,52 @@ describe('two bubbles on tubes of equal bore, in pure liquid', () => {
 describe("Gibbs' criterion in a run", () => {
   // An insoluble Langmuir film: eps = RT Gamma_inf theta/(1-theta), gamma = gamma_0 + RT Gamma_inf ln(1-theta). A vessel whose
   // pressure falls lets two equal bubbles grow and their films thin out, until the pair passes eps = gamma/2.
+  // For a film of two faces E = 2 eps, and the same coverage is where E = gamma.
   const RT = 8.314462618 * 298.15;
   const saturation = 5e-6;
   const clean = 0.072;
-  const criterion = (theta: number): number =>
-    (2 * RT * saturation * theta) / (1 - theta) - (clean + RT * saturation * Math.log(1 - theta));
-  const { events, frames } = carryThrough({
-    ambient: { pressure: { wave: 'ramp', from: AMBIENT, to: '60 kPa', start: 0, over: '10 s' } },
-    recipes: {
-      film: {
-        tension: { law: 'langmuir', clean, saturation, szyszkowski: '1 mol/m^3' },
-        loading: { coverage: 0.86 },
-        supply: { kind: 'none' },
+  const elasticity = (theta: number): number => (RT * saturation * theta) / (1 - theta);
+  const tension = (theta: number): number => clean + RT * saturation * Math.log(1 - theta);
+  const carried = (faces: number) =>
+    carryThrough({
+      ambient: { pressure: { wave: 'ramp', from: AMBIENT, to: '60 kPa', start: 0, over: '10 s' } },
+      recipes: {
+        film: {
+          tension: { law: 'langmuir', clean, saturation, szyszkowski: '1 mol/m^3' },
+          loading: { coverage: 0.86 },
+          supply: { kind: 'none' },
+        },
       },
-    },
-    nodes: ['A', 'B'].map((id) => ({ id, kind: 'bubble', radius: '5 mm', recipe: 'film' })),
-    links: [{ id: 'f', kind: 'film', from: 'A', to: 'B', area: '1 mm^2', thickness: '10 um' }],
-    run: { until: '10 s', frames: 1000, tolerance: 1e-8 },
-  });
-  const turn = events.find((event) => event.event === 'pair-unstable')!;
+      nodes: ['A', 'B'].map((id) => ({ id, kind: 'bubble', radius: '5 mm', faces, recipe: 'film' })),
+      links: [{ id: 'f', kind: 'film', from: 'A', to: 'B', area: '1 mm^2', thickness: '10 um' }],
+      run: { until: '10 s', frames: 1000, tolerance: 1e-8 },
+    });
 
-  it('turns the pair unstable at the instant where eps is half of gamma', () => {
-    let [low, high] = [0.5, 0.86];
-    for (let pass = 0; pass < 100; pass++) {
-      const middle = 0.5 * (low + high);
-      if (criterion(middle) < 0) low = middle;
-      else high = middle;
-    }
-    // Gamma A is constant: theta = 0.86 (5 mm/R)^2. Radii between two frames by the straight line: a millionth off.
-    const turned = 5e-3 * Math.sqrt(0.86 / low);
-    const after = frames.findIndex(({ time }) => time > turn.time);
-    const [one, two] = [frames[after - 1]!, frames[after]!];
-    const share = (turn.time - one.time) / (two.time - one.time);
-    const R = one.radius.A! + share * (two.radius.A! - one.radius.A!);
-    expect(Math.abs(R / turned - 1)).toBeLessThan(1e-6);
-  });
+  for (const [what, faces, criterion] of [
+    ['half of gamma, one face', 1, (theta: number) => elasticity(theta) - 0.5 * tension(theta)],
+    ['gamma as E of the film, two faces', 2, (theta: number) => 2 * elasticity(theta) - tension(theta)],
+  ] as const) {
+    const { events, frames } = carried(faces);
+    const turn = events.find((event) => event.event === 'pair-unstable')!;
 
-  it('tells it once', () => {
-    expect(events.map((event) => event.event)).toEqual(['pair-unstable', 'run-ended']);
-  });
+    it(`turns the pair unstable at the instant where eps is ${what}`, () => {
+      let [low, high] = [0.5, 0.86];
+      for (let pass = 0; pass < 100; pass++) {
+        const middle = 0.5 * (low + high);
+        if (criterion(middle) < 0) low = middle;
+        else high = middle;
+      }
+      // Gamma A is constant: theta = 0.86 (5 mm/R)^2. Radii between two frames by the straight line: a millionth off.
+      const turned = 5e-3 * Math.sqrt(0.86 / low);
+      const after = frames.findIndex(({ time }) => time > turn.time);
+      const [one, two] = [frames[after - 1]!, frames[after]!];
+      const share = (turn.time - one.time) / (two.time - one.time);
+      const R = one.radius.A! + share * (two.radius.A! - one.radius.A!);
+      expect(Math.abs(R / turned - 1)).toBeLessThan(1e-6);
+    });
+
+    it(`tells it once, ${faces === 1 ? 'one face' : 'two faces'}`, () => {
+      expect(events.map((event) => event.event)).toEqual(['pair-unstable', 'run-ended']);
+    });
+  }
 });
