@@ -1,131 +1,96 @@
-/** One problem, run in a process of its own: several times over, so that the first run shows what compiling costs. */
+/**
+ * One problem in a process of its own: the entry of that process. It is run again and again for a while: the first run has the
+ * compiling in it, which the peers have behind them, and is told apart; the time is the median of those after it. Memory is that of the
+ * first run. Asked for `nothing`, it tells the memory of Node with the core loaded and nothing run.
+ */
 import { existsSync, readFileSync } from 'node:fs';
 import { startNetworkRun } from '../../core/run/engine.ts';
+import { median, type Measurement } from './measurement.ts';
 import { contactsProblem, cycleProblem, poolProblem, type Problem } from './problems.ts';
-import type { Entry } from './table.ts';
 
-export interface Measurement {
-  /** Seconds of the first run in the process, in which the code is compiled. */
-  readonly first_s: number;
-  /** Median of the runs after it (of the first where there is but one). */
-  readonly wall_s: number;
-  readonly cpu_s: number;
-  readonly steps: number;
-  readonly t_end: number;
-  readonly R21_end: number;
-  readonly left: number;
-  /** The worst relative distance from the check values. */
-  readonly accuracy: number;
-  /** Greatest resident memory by the end of the first run, all of Node included, MB. */
-  readonly peak_rss_mb: number;
+const makers: Readonly<Record<string, (size: number, tolerance: number) => Problem>> = {
+  pool: poolProblem,
+  contacts: contactsProblem,
+  cycle: cycleProblem,
+};
+
+/** The last cycle, s, and the grid on which its radii are read: the peers' own. */
+const CYCLE = 2;
+const READINGS = 2000;
+
+/** A process goes on for about so many seconds, and for so many runs at most. */
+const SECONDS = 3;
+const MOST_RUNS = 9;
+
+function measure(kind: string, size: number, tolerance: number): Measurement {
+  const begun = performance.now();
+  const first = once(kind, size, tolerance);
+  const warm: Measurement[] = [];
+  while (warm.length + 1 < MOST_RUNS && performance.now() - begun < 1000 * SECONDS)
+    warm.push(once(kind, size, tolerance));
+  const counted = warm.length > 0 ? warm : [first];
+  return {
+    ...first,
+    first_s: first.wall_s,
+    wall_s: median(counted.map((run) => run.wall_s)),
+    cpu_s: median(counted.map((run) => run.cpu_s)),
+  };
 }
 
-interface Once {
-  readonly wall: number;
-  readonly cpu: number;
-  readonly steps: number;
-  readonly endTime: number;
-  readonly R21: number;
-  readonly left: number;
-  readonly accuracy: number;
-}
-
-export function median(values: readonly number[]): number {
-  const sorted = [...values].sort((a, b) => a - b);
-  const middle = Math.floor(sorted.length / 2);
-  return sorted.length % 2 === 1 ? sorted[middle]! : (sorted[middle - 1]! + sorted[middle]!) / 2;
-}
-
-export function makeProblem({ kind, size }: Pick<Entry, 'kind' | 'size'>, tolerance: number): Problem {
-  switch (kind) {
-    case 'pool':
-      return poolProblem(size, tolerance);
-    case 'contacts':
-      return contactsProblem(size, tolerance);
-    case 'cycle':
-      return cycleProblem(size, tolerance);
-  }
-}
-
-/** Instants a step at which the radii of a cycle's last period are read. */
-const READINGS = 16;
-
-function once(problem: Problem): Once {
-  const { check } = problem;
+function once(kind: string, size: number, tolerance: number): Measurement {
+  const make = makers[kind];
+  if (make === undefined) throw new Error(`no problem is of the kind ${kind}`);
   const cpu = process.cpuUsage();
   const start = performance.now();
-  const run = startNetworkRun(problem.start, problem.settings, { event: () => undefined, frame: () => undefined });
-  let least = Infinity;
-  let greatest = 0;
-  // Of a cycle the last period is read inside its steps; two seconds long.
-  const lastPeriod = check.radii === undefined ? Infinity : check.endTime - 2;
+  const { check, settings, start: initial } = make(size, tolerance);
+  const run = startNetworkRun(initial, settings, { event: () => undefined, frame: () => undefined });
+  const extremes = check.radii === undefined ? null : { r_min: Infinity, r_max: 0 };
+  let reading = 0;
   while (!run.finished) {
-    const before = run.time;
-    run.advance(check.radii === undefined ? 64 : 1);
-    if (run.time <= lastPeriod) continue;
-    for (let q = 0; q <= READINGS; q++) {
-      const t = before + ((run.time - before) * q) / READINGS;
-      if (t < lastPeriod) continue;
+    run.advance(extremes === null ? 64 : 1);
+    if (extremes === null) continue;
+    for (; reading <= READINGS; reading++) {
+      const t = check.endTime - CYCLE + (CYCLE * reading) / READINGS;
+      if (t > run.time) break;
       for (const R of run.radiiAt(t)) {
-        least = Math.min(least, R);
-        greatest = Math.max(greatest, R);
+        extremes.r_min = Math.min(extremes.r_min, R);
+        extremes.r_max = Math.max(extremes.r_max, R);
       }
     }
   }
-  const wall = (performance.now() - start) / 1000;
-  const { user, system } = process.cpuUsage(cpu);
   const result = run.result();
-  if (result.stop.kind !== 'done') throw new Error(`${problem.name} did not end: ${JSON.stringify(result.stop)}`);
   let sum = 0;
   let squares = 0;
   for (const R of run.radiiAt(run.time)) {
     sum += R;
     squares += R * R;
   }
-  const R21 = squares / sum;
-  const errors =
-    check.radii === undefined
-      ? [result.endTime / check.endTime - 1, R21 / check.R21 - 1]
-      : [least / check.radii[0] - 1, greatest / check.radii[1] - 1];
+  const wall = (performance.now() - start) / 1000;
+  const { user, system } = process.cpuUsage(cpu);
+  if (result.stop.kind !== 'done') throw new Error(`the run did not end: ${JSON.stringify(result.stop)}`);
   return {
-    wall,
-    cpu: (user + system) / 1e6,
+    wall_s: wall,
+    cpu_s: (user + system) / 1e6,
     steps: result.steps,
-    endTime: result.endTime,
-    R21,
+    t_end: result.endTime,
+    R21_end: squares / sum,
     left: result.bubblesLeft,
-    accuracy: Math.max(...errors.map(Math.abs)),
+    ...extremes,
+    peak_rss_mb: peakMemory(),
+    check: { ...check, left: settings.untilBubbles ?? initial.network.nodes.bubbleCount },
   };
 }
 
-/** MB. Where /proc tells, it is asked: what the system's own count of a new process begins with is its parent's. */
+/** MB. Where /proc tells, it is asked: the count of `resourceUsage` begins at that of the process which started this one. */
 function peakMemory(): number {
   const status = '/proc/self/status';
   const line = existsSync(status) ? /VmHWM:\s+(\d+) kB/.exec(readFileSync(status, 'utf8')) : null;
   return (line === null ? process.resourceUsage().maxRSS : Number(line[1])) / 1024;
 }
 
-/** Runs one problem for about `seconds`, once at least and nine times at most. */
-export function measure(entry: Pick<Entry, 'kind' | 'size'>, tolerance: number, seconds: number): Measurement {
-  const runs: Once[] = [];
-  const start = performance.now();
-  let peak = 0;
-  do {
-    runs.push(once(makeProblem(entry, tolerance)));
-    // Runs that follow in the same process only add what was not yet collected.
-    if (runs.length === 1) peak = peakMemory();
-  } while (runs.length < 9 && performance.now() - start < 1000 * seconds);
-  const first = runs[0]!;
-  const warm = runs.length > 1 ? runs.slice(1) : runs;
-  return {
-    first_s: first.wall,
-    wall_s: median(warm.map((run) => run.wall)),
-    cpu_s: median(warm.map((run) => run.cpu)),
-    steps: first.steps,
-    t_end: first.endTime,
-    R21_end: first.R21,
-    left: first.left,
-    accuracy: first.accuracy,
-    peak_rss_mb: peak,
-  };
-}
+const [kind, size, tolerance] = process.argv.slice(2);
+process.stdout.write(
+  JSON.stringify(
+    kind === 'nothing' ? { peak_rss_mb: peakMemory() } : measure(kind ?? '', Number(size), Number(tolerance)),
+  ),
+);

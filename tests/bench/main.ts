@@ -1,154 +1,124 @@
 /**
- * The bench: every problem in a process of its own, checked against its check values, and where asked the peers in between, so that
+ * The bench: every problem in processes of its own, checked against its check values, and where asked the peers in between, so that
  * all feel the same machine. Prints a table, or JSON.
  */
-import { spawnSync } from 'node:child_process';
-import { mkdtempSync, rmSync } from 'node:fs';
-import { tmpdir } from 'node:os';
-import { join } from 'node:path';
-import { pathToFileURL } from 'node:url';
-import { parseArgs } from 'node:util';
-import { makeProblem, measure, median, type Measurement } from './child.ts';
-import { findCvode, findScipy, peersDirectory, type Peer, type PeerMeasurement } from './peers.ts';
-import { reportText, type Row } from './report.ts';
-import { ENTRIES, TWO_BUBBLES, type Entry } from './table.ts';
+import { readArguments, USAGE, type Asked } from './arguments.ts';
+import { HOLD, ladder, loosest, type Rung } from './calibrate.ts';
+import { summarise, type Check, type Failure, type Measurement, type Summary } from './measurement.ts';
+import {
+  findPeers,
+  memoryOfNothing,
+  ours as ourProgram,
+  type Peer,
+  type PeersFound,
+  type Program,
+} from './programs.ts';
+import { seconds, tableText, type Row } from './table.ts';
+import { TARGETS, TWO_BUBBLES, type PeerName, type Target } from './targets.ts';
+import { timeCommand, type CommandTime } from './two-bubbles.ts';
 
-const USAGE = `bench [--only NAME,...] [--peers] [--peers-in DIR] [--rounds N] [--tolerance X] [--peer-timeout S] [--json]
-  --only NAME,...   these problems alone: ${[...ENTRIES.map((entry) => entry.name), TWO_BUBBLES.name].join(', ')}
-  --peers           the programs of other make too, in turn with ours
-  --peers-in DIR    where they are (default: FROTHWRIGHT_PEERS, or ../shared/peers beside the checkout)
-  --rounds N        rounds of the interleaved runs (default 3)
-  --tolerance X     our run tolerance, in place of each problem's own
-  --peer-timeout S  seconds after which a peer is given up (default 600)
-  --json            the measurements as JSON
-`;
+const say = (text: string): void => void process.stderr.write(`${text}\n`);
 
-/** Seconds that one process goes on repeating its problem. */
-const SECONDS_A_PROCESS = 3;
-
-export async function main(words: readonly string[], root: string): Promise<number> {
-  if (words[0] === '--child') {
-    const { kind, size, tolerance } = JSON.parse(words[1]!) as Entry;
-    process.stdout.write(JSON.stringify(measure({ kind, size }, tolerance, SECONDS_A_PROCESS)));
-    return 0;
-  }
-  const { values } = parseArgs({
-    args: [...words],
-    options: {
-      only: { type: 'string' },
-      peers: { type: 'boolean', default: false },
-      'peers-in': { type: 'string' },
-      rounds: { type: 'string', default: '3' },
-      tolerance: { type: 'string' },
-      'peer-timeout': { type: 'string', default: '600' },
-      json: { type: 'boolean', default: false },
-      help: { type: 'boolean', short: 'h', default: false },
-    },
-  });
-  if (values.help) {
+/** `directory` holds the bundle. The exit status: 0; 1 where a problem failed or missed its check values; 2 bad usage. */
+export function main(words: readonly string[], root: string, directory: string): number {
+  const asked = readArguments(words);
+  if ('help' in asked) {
     process.stdout.write(USAGE);
     return 0;
   }
-  const names = values.only?.split(',') ?? [...ENTRIES.map((entry) => entry.name), TWO_BUBBLES.name];
-  const unknown = names.filter((name) => name !== TWO_BUBBLES.name && !ENTRIES.some((entry) => entry.name === name));
-  if (unknown.length > 0) {
-    process.stderr.write(`bench: no problem is called ${unknown.join(', ')}\n${USAGE}`);
+  if ('fault' in asked) {
+    say(`bench: ${asked.fault}\n${USAGE}`);
     return 2;
   }
-  const say = (text: string): void => void process.stderr.write(`${text}\n`);
-  const peers = values.peers ? findPeers(values['peers-in'] ?? null, root, say) : [];
-  const rows: Row[] = [];
-  for (const entry of ENTRIES.filter(({ name }) => names.includes(name))) {
-    const ours = values.tolerance === undefined ? entry : { ...entry, tolerance: Number(values.tolerance) };
-    say(`${entry.name} ...`);
-    rows.push(runProblem(ours, peers, Number(values.rounds), Number(values['peer-timeout']), root));
+  const ours = ourProgram(directory);
+  const found: PeersFound = asked.peers
+    ? findPeers(asked.peersIn, root, directory, asked.peerTimeout)
+    : { peers: [], absent: {} };
+  for (const [name, why] of Object.entries(found.absent)) say(`absent: ${name}: ${why}`);
+  const targets = TARGETS.filter(({ name }) => asked.names.includes(name));
+  if (asked.calibrate) {
+    for (const target of targets) calibrate(target, ours, found.peers, asked.tolerance);
+    return 0;
   }
-  const command = names.includes(TWO_BUBBLES.name) ? timeCommand(root) : null;
-  if (values.json) {
-    const json = rows.map(({ entry, ours, others }) => ({ problem: entry.name, ...ours, peers: others }));
-    process.stdout.write(`${JSON.stringify(json, null, 2)}\n`);
-  } else process.stdout.write(reportText(rows, command, peers.length > 0));
-  const inaccurate = rows.filter(({ entry, ours }) => !(ours.accuracy <= entry.accuracy));
-  for (const { entry, ours } of inaccurate) {
-    say(
-      `bench: ${entry.name} is off its check value by ${ours.accuracy.toExponential(1)}; ${entry.accuracy} is allowed`,
-    );
-  }
-  return Promise.resolve(inaccurate.length > 0 ? 1 : 0);
+  const rows = targets.map((target) => runRounds(target, ours, found.peers, asked));
+  const command = asked.names.includes(TWO_BUBBLES.name) ? timeCommand(root, asked.repeat) : null;
+  const report = { rows, command, withPeers: asked.peers, memoryOfNothing: memoryOfNothing(directory) };
+  process.stdout.write(asked.json ? jsonText(rows, command, found.absent) : tableText(report));
+  return verdict(rows);
 }
 
-function findPeers(asked: string | null, root: string, say: (text: string) => void): Peer[] {
-  const directory = peersDirectory(asked, root);
-  const peers: Peer[] = [];
-  for (const found of [findScipy(directory), findCvode(directory, root)]) {
-    if ('peer' in found) peers.push(found.peer);
-    else say(`absent: ${found.absent}`);
-  }
-  return peers;
-}
-
-function runProblem(entry: Entry, peers: readonly Peer[], rounds: number, timeout: number, root: string): Row {
-  const { check } = makeProblem({ kind: entry.kind, size: entry.size }, entry.tolerance);
-  const ours: Measurement[] = [];
-  const others: Record<string, PeerMeasurement[]> = {};
-  const failed: Record<string, { failed: string }> = {};
-  for (let round = 0; round < rounds; round++) {
-    ours.push(inProcess(entry, root));
-    for (const peer of peers) {
-      if (peer.name in failed) continue;
-      const said = peer.measure(entry, check, timeout);
-      if ('failed' in said) failed[peer.name] = said;
-      else (others[peer.name] ??= []).push(said);
+/** Ours and the peers in turn; one that failed is not run again. */
+function runRounds(target: Target, ours: Program, peers: readonly Peer[], { tolerance, repeat }: Asked): Row {
+  const own = tolerance ?? target.tolerance;
+  const said: Record<string, Measurement[]> = {};
+  const failed: Record<string, Failure> = {};
+  let check: Check | undefined;
+  for (let round = 1; round <= repeat; round++) {
+    for (const program of [ours, ...peers]) {
+      if (program.name in failed) continue;
+      say(`${target.name}, round ${round} of ${repeat}: ${program.name}`);
+      const outcome = program.run(target, program.name === 'ours' ? own : target.peers[program.name]);
+      if ('failed' in outcome) {
+        failed[program.name] = outcome;
+        // Without our child's check values no time of a peer means anything.
+        if (check === undefined) return { target, ours: outcome, peers: {} };
+        continue;
+      }
+      (said[program.name] ??= []).push(outcome);
+      check ??= outcome.check;
     }
   }
-  const medianOf = (pick: (one: Measurement) => number): number => median(ours.map(pick));
+  const summary = (name: PeerName | 'ours', at: number): Summary | Failure =>
+    failed[name] ?? summarise(said[name]!, check!, at);
   return {
-    entry,
-    ours: {
-      ...ours[0]!,
-      first_s: medianOf((one) => one.first_s),
-      wall_s: medianOf((one) => one.wall_s),
-      cpu_s: medianOf((one) => one.cpu_s),
-      peak_rss_mb: Math.max(...ours.map((one) => one.peak_rss_mb)),
-    },
-    spread: [Math.min(...ours.map((one) => one.wall_s)), Math.max(...ours.map((one) => one.wall_s))],
-    others: {
-      ...failed,
-      ...Object.fromEntries(
-        Object.entries(others).map(([name, said]) => [
-          name,
-          { ...said[0]!, wall_s: median(said.map((one) => one.wall_s)) },
-        ]),
-      ),
-    },
+    target,
+    ours: summary('ours', own),
+    peers: Object.fromEntries(peers.map(({ name }) => [name, summary(name, target.peers[name])])),
   };
 }
 
-function inProcess(entry: Entry, root: string): Measurement {
-  const bundle = join(root, 'dist', 'bench', 'bench.mjs');
-  const code = `import(${JSON.stringify(pathToFileURL(bundle).href)}).then((bench) => bench.main(process.argv.slice(1), ''))`;
-  const words = ['--input-type=module', '--eval', code, '--', '--child', JSON.stringify(entry)];
-  const ended = spawnSync(process.execPath, words, { encoding: 'utf8' });
-  if (ended.status !== 0) throw new Error(`${entry.name}: ${ended.stderr}`);
-  return JSON.parse(ended.stdout) as Measurement;
+function calibrate(target: Target, ours: Program, peers: readonly Peer[], from: number | null): void {
+  const first = ours.run(target, target.tolerance);
+  if ('failed' in first || first.check === undefined) {
+    say(`${target.name} failed: ${'failed' in first ? first.failed : 'no check values'}`);
+    return;
+  }
+  const { check } = first;
+  for (const program of [ours, ...peers]) {
+    const tell = ({ tolerance, outcome }: Rung): void =>
+      say(
+        `${target.name} ${program.name} at ${tolerance}: ` +
+          ('failed' in outcome
+            ? outcome.failed
+            : `off by ${outcome.accuracy.toExponential(1)}, ${outcome.steps} steps, ${seconds(outcome.wall_s)}`),
+      );
+    const run = (tolerance: number): Measurement | Failure => program.run(target, tolerance);
+    const found = loosest(ladder(from), HOLD[program.name], target.accuracy, check, run, tell);
+    const sentence = found === null ? `does not reach ${target.accuracy}` : `reaches ${target.accuracy} at ${found}`;
+    process.stdout.write(`${target.name}: ${program.name} ${sentence}\n`);
+  }
 }
 
-/** The built command on a file of two bubbles, from its start to its end, s. */
-function timeCommand(root: string): { readonly wall_s: number; readonly spread: readonly [number, number] } {
-  const launcher = join(root, 'electron', 'command', 'frothwright.mjs');
-  const scenario = join(root, 'scenarios', 'two-bubbles-pure-water.froth.json');
-  const directory = mkdtempSync(join(tmpdir(), 'frothwright-bench-'));
-  const times: number[] = [];
-  try {
-    for (let round = 0; round < 6; round++) {
-      const start = performance.now();
-      const ended = spawnSync(process.execPath, [launcher, 'run', scenario, '--out', join(directory, 'out')]);
-      if (ended.status !== 0) throw new Error(`the command failed: ${ended.stderr.toString()}`);
-      // The first builds the command where it is older than its sources.
-      if (round > 0) times.push((performance.now() - start) / 1000);
-    }
-  } finally {
-    rmSync(directory, { recursive: true, force: true });
+function jsonText(rows: readonly Row[], command: CommandTime | null, absent: PeersFound['absent']): string {
+  const missing = Object.fromEntries(Object.entries(absent).map(([name, why]) => [name, { absent: why }]));
+  const problems: object[] = rows.map(({ target, ours, peers }) => ({
+    problem: target.name,
+    ...ours,
+    peers: { ...peers, ...missing },
+  }));
+  if (command !== null) problems.push({ problem: TWO_BUBBLES.name, ...command });
+  return `${JSON.stringify(problems, null, 2)}\n`;
+}
+
+function verdict(rows: readonly Row[]): number {
+  let status = 0;
+  for (const { target, ours } of rows) {
+    if ('failed' in ours) say(`bench: ${target.name} failed: ${ours.failed}`);
+    else if (!(ours.accuracy <= target.accuracy)) {
+      const off = ours.accuracy.toExponential(1);
+      say(`bench: ${target.name} is off its check values by ${off}; ${target.accuracy} is wanted`);
+    } else continue;
+    status = 1;
   }
-  return { wall_s: median(times), spread: [Math.min(...times), Math.max(...times)] };
+  return status;
 }
