@@ -69,7 +69,9 @@ export function compileScenario(scenario: Scenario): { start: CompiledStart } | 
   };
   const amounts = startingAmounts(scenario, order, network, sizes);
   for (let i = 0; i < nodes.bubbleCount; i++) {
-    if (amounts[i * scenario.species.length]! >= 0 && Number.isFinite(amounts[i * scenario.species.length]!)) continue;
+    let whole = 0;
+    for (let k = 0; k < scenario.species.length; k++) whole += amounts[i * scenario.species.length + k]!;
+    if (whole > 0 && whole < Infinity) continue;
     faults.push({
       path: `nodes[${nodes.origin[i]!}]`,
       message:

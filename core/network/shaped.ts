@@ -54,12 +54,14 @@ function evaluateBalance(state: NodeState, film: Film, i: number, P: number, x: 
 
 /**
  * Whether Newton's method may end with this step: its error then is of the order of the step's square, measured against the size,
- * or against the room that a film has left to its full coverage, where the balance has a pole. The film is that of `filmOut`.
+ * or against the room that a film has left to its full coverage, where the balance has a pole; there, a residual F near rounding
+ * will do too. The film is that of `filmOut`.
  */
-function isLast(step: number, x: number): boolean {
+function isLast(step: number, x: number, F: number, nRT: number): boolean {
+  const size = Math.abs(step);
+  if (!(size < 1e-8 * x)) return false;
   const coverage = filmOut[FILM.coverage]!;
-  const room = coverage > 0 ? Math.max(1 - coverage, 1e-12) : 1;
-  return Math.abs(step) < 1e-8 * x * room;
+  return !(coverage > 0) || size < 1e-8 * x * (1 - coverage) || Math.abs(F) < 1e-11 * nRT;
 }
 
 /**
@@ -116,22 +118,25 @@ export function evaluateShaped(
     let x = before + sizeSlope[i]! * (n - lastAmount[i]!);
     if (!(x > 0.3 * before && x < 3 * before)) x = before;
     let step = NaN;
+    let residual = NaN;
     for (let pass = 0; pass < 12; pass++) {
       evaluateBalance(state, film, i, P, x);
-      step = (balance[0]! * balance[2]! - nRT) / (balance[1]! * balance[2]! + balance[0]! * balance[3]!);
-      if (isLast(step, x)) break;
+      residual = balance[0]! * balance[2]! - nRT;
+      step = residual / (balance[1]! * balance[2]! + balance[0]! * balance[3]!);
+      if (isLast(step, x, residual, nRT)) break;
       x -= step;
       if (!(x > 0)) {
         step = NaN;
         break;
       }
     }
-    if (!isLast(step, x)) {
+    if (!isLast(step, x, residual, nRT)) {
       x = solveSafely(state, film, i, P, nRT, before);
       if (!(x > 0)) return false;
       evaluateBalance(state, film, i, P, x);
-      step = (balance[0]! * balance[2]! - nRT) / (balance[1]! * balance[2]! + balance[0]! * balance[3]!);
-      if (!isLast(step, x) && !(Math.abs(balance[0]! * balance[2]! - nRT) < 1e-9 * nRT)) return false;
+      residual = balance[0]! * balance[2]! - nRT;
+      step = residual / (balance[1]! * balance[2]! + balance[0]! * balance[3]!);
+      if (!isLast(step, x, residual, nRT) && !(Math.abs(residual) < 1e-9 * nRT)) return false;
     }
     const slope = balance[1]! * balance[2]! + balance[0]! * balance[3]!; // dF/dx
     x -= step;

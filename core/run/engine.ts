@@ -6,7 +6,7 @@ import { createStepper, errorNorm } from '../integrate/choose.ts';
 import { BUBBLE } from '../network/network.ts';
 import { setActiveBubbles } from '../network/node-state.ts';
 import { bury, construct, nameOf, rebuild, type Build, type Start } from './build.ts';
-import { firstFall, type Fall } from './fall.ts';
+import { firstFall, vanishedAtOnce, type Fall } from './fall.ts';
 import { createFrameMaker } from './frames.ts';
 import { lookInside } from './inside.ts';
 import { createLedger, surfactantOf } from './ledger.ts';
@@ -152,6 +152,11 @@ export function startNetworkRun(start: Start, settings: RunSettings, observer: R
       return;
     }
     if (outcome.kind === 'failed') {
+      const gone = vanishedAtOnce(build, outcome.worst, inside.work);
+      if (gone) {
+        breakOff(t, gone, [], false);
+        return;
+      }
       const node = nameOf(build, Math.min(Math.floor(outcome.worst / species), build.network.nodes.count - 1));
       const why =
         outcome.reason === 'not-finite'

@@ -51,3 +51,27 @@ export function firstFall(build: Build, inside: Inside, t: number, end: number, 
   }
   return first;
 }
+
+/** What is shorter than this share of the time that has passed is lost in the clock's rounding. */
+const MOMENT = 1e-11;
+
+/**
+ * A bubble that no step was short enough to follow, because all that is left of it passes within the rounding of the clock: through a
+ * tube R^4 falls linearly, and the last decades of R take no time. Null where something else is in the way.
+ * @param worst the unknown that the step failed by
+ */
+export function vanishedAtOnce(build: Build, worst: number, scratch: Float64Array): Fall | null {
+  const { network, system, stepper, alive } = build;
+  const species = network.species.length;
+  const node = Math.floor(worst / species);
+  if (node >= network.nodes.bubbleCount || alive[node] === 0 || network.nodes.mouth[node]! > 0) return null;
+  const t = stepper.time;
+  system.rates(t, stepper.state, scratch);
+  let amount = 0;
+  let rate = 0;
+  for (let k = 0; k < species; k++) {
+    amount += stepper.state[node * species + k]!;
+    rate += scratch[node * species + k]!;
+  }
+  return -rate * MOMENT * t > amount ? { node, time: t, kind: 'vanished' } : null;
+}
