@@ -4,10 +4,16 @@
  */
 import { GAS_CONSTANT } from '../quantities/constants.ts';
 import { CAVITY, POOL, RESERVOIR } from './network.ts';
-import type { NodeState } from './node-state.ts';
+import { fail, type NodeState } from './node-state.ts';
 import { evaluateShaped } from './shaped.ts';
 import { differentiateSpheres, evaluateSpheres } from './sphere.ts';
 import { waveformSlope, waveformValue } from './waveform.ts';
+
+/**
+ * A share of its gas, or a pressure in Pa, by which a species may fall below zero before that counts: integration errs by less, and
+ * what falls further is gas that is not there.
+ */
+const BELOW_ZERO = -1e-5;
 
 /**
  * @param side which value an edge of a waveform has: after it (1) or before it (-1)
@@ -48,14 +54,16 @@ export function evaluateNodes(
       state.stiffness[i] = 0;
       if (withSlopes) state.pressureDrift[i] = waveformSlope(nodes.drive[i]!, t, side);
     }
+    for (let k = 0; k < species; k++) {
+      if (!(partial[i * species + k]! >= BELOW_ZERO * Math.max(1, total))) return fail(state, i);
+    }
     pressure[i] = total;
   }
-  if (species > 1) spread(state, y, withSlopes);
-  return true;
+  return species === 1 || spread(state, y, withSlopes);
 }
 
-/** Partial pressures of bubbles, p_k = p n_k/n, and for every node d p_k/d n_l. */
-function spread(state: NodeState, y: Float64Array, withSlopes: boolean): void {
+/** Partial pressures of bubbles, p_k = p n_k/n, and for every node d p_k/d n_l; false where a bubble holds less than nothing. */
+function spread(state: NodeState, y: Float64Array, withSlopes: boolean): boolean {
   const { species, pressure, partial, partialSlope, stiffness } = state;
   const { nodes, temperature } = state.network;
   for (let list = 0; list < 2; list++) {
@@ -68,6 +76,7 @@ function spread(state: NodeState, y: Float64Array, withSlopes: boolean): void {
       const p = pressure[i]!;
       for (let k = 0; k < species; k++) {
         const x = y[i * species + k]! / n;
+        if (!(x >= BELOW_ZERO)) return fail(state, i);
         partial[i * species + k] = p * x;
         if (!withSlopes) continue;
         // d p_k/d n_l = x_k u + (p/n)(delta_kl - x_k)
@@ -76,7 +85,7 @@ function spread(state: NodeState, y: Float64Array, withSlopes: boolean): void {
       }
     }
   }
-  if (!withSlopes) return;
+  if (!withSlopes) return true;
   for (let q = 0; q < state.rigid.length; q++) {
     const i = state.rigid[q]!;
     for (let k = 0; k < species; k++) {
@@ -89,4 +98,5 @@ function spread(state: NodeState, y: Float64Array, withSlopes: boolean): void {
       partialSlope[(i * species + k) * species + k] = own;
     }
   }
+  return true;
 }

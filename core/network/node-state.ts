@@ -33,6 +33,8 @@ export interface NodeState {
   readonly radiusDrift: Float64Array; // m/s
   /** Bubbles to be evaluated: a set that shrinks as bubbles vanish or are carried apart. */
   readonly spheres: Int32Array;
+  /** The node at which the last evaluation failed. */
+  failed: number;
   sphereCount: number;
   readonly shaped: Int32Array;
   shapedCount: number;
@@ -73,6 +75,7 @@ export function createNodeState(network: Network): NodeState {
     pressureDrift: new Float64Array(n),
     radiusDrift: new Float64Array(n),
     spheres: new Int32Array(nodes.bubbleCount),
+    failed: -1,
     sphereCount: 0,
     shaped: new Int32Array(nodes.bubbleCount),
     shapedCount: 0,
@@ -98,4 +101,10 @@ export function setActiveBubbles(state: NodeState, active: Uint8Array): void {
 export function activateBubble(state: NodeState, i: number): void {
   if (isPlainSphere(state.network, i)) state.spheres[state.sphereCount++] = i;
   else state.shaped[state.shapedCount++] = i;
+}
+
+/** A node has no state: an evaluation ends with false, and tells which. */
+export function fail(state: NodeState, i: number): false {
+  state.failed = i;
+  return false;
 }

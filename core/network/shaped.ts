@@ -9,7 +9,7 @@
  */
 import { FILM, FILM_SIZE, type Film } from '../films/film.ts';
 import { GAS_CONSTANT } from '../quantities/constants.ts';
-import type { NodeState } from './node-state.ts';
+import { fail, type NodeState } from './node-state.ts';
 
 const filmOut = new Float64Array(FILM_SIZE);
 /** p, dp/dx, V, dV/dx, A of one bubble. */
@@ -110,7 +110,7 @@ export function evaluateShaped(
     const i = shaped[q]!;
     let n = y[i * species]!;
     for (let k = 1; k < species; k++) n += y[i * species + k]!;
-    if (!(n > 0)) return false;
+    if (!(n > 0)) return fail(state, i);
     const film = films[nodes.film[i]!]!;
     const P = ambient + nodes.head[i]!;
     const nRT = n * RT;
@@ -132,11 +132,11 @@ export function evaluateShaped(
     }
     if (!isLast(step, x, residual, nRT)) {
       x = solveSafely(state, film, i, P, nRT, before);
-      if (!(x > 0)) return false;
+      if (!(x > 0)) return fail(state, i);
       evaluateBalance(state, film, i, P, x);
       residual = balance[0]! * balance[2]! - nRT;
       step = residual / (balance[1]! * balance[2]! + balance[0]! * balance[3]!);
-      if (!isLast(step, x, residual, nRT) && !(Math.abs(residual) < 1e-9 * nRT)) return false;
+      if (!isLast(step, x, residual, nRT) && !(Math.abs(residual) < 1e-9 * nRT)) return fail(state, i);
     }
     const slope = balance[1]! * balance[2]! + balance[0]! * balance[3]!; // dF/dx
     x -= step;

@@ -7,7 +7,7 @@
  * Solved by Halley's method from the last radius: two steps reach rounding for any change that a time step makes.
  */
 import { GAS_CONSTANT } from '../quantities/constants.ts';
-import type { NodeState } from './node-state.ts';
+import { fail, type NodeState } from './node-state.ts';
 
 /**
  * Radius and pressure of the active plain spheres.
@@ -23,7 +23,7 @@ export function evaluateSpheres(state: NodeState, ambient: number, y: Float64Arr
     const i = spheres[q]!;
     let n = y[i * species]!;
     for (let k = 1; k < species; k++) n += y[i * species + k]!;
-    if (!(n > 0)) return false;
+    if (!(n > 0)) return fail(state, i);
     const P = ambient + head[i]!;
     const g = 2 * faces[i]! * tension[i]!;
     const target = c * n;
@@ -38,7 +38,7 @@ export function evaluateSpheres(state: NodeState, ambient: number, y: Float64Arr
       // The error left is of the order of the cube of the relative change.
       if (change < 1e-5 * R && change > -1e-5 * R) break;
     }
-    if (!(Math.abs(change) <= 1e-5 * R)) return false;
+    if (!(Math.abs(change) <= 1e-5 * R)) return fail(state, i);
     size[i] = R;
     radius[i] = R;
     pressure[i] = P + g / R;

@@ -147,11 +147,11 @@ export function createPairs(system: NetworkSystem, linkOpen: readonly Uint8Array
     isPair,
     from: fromOf,
     to: toOf,
-    // Via cavities: negative, and so apart from the links' own numbers.
+    // Via cavities: far below zero, and so apart from the links' own numbers (those that were joined have small negative ones).
     key: (k) =>
       k < direct
         ? groupOf(groupAt[k]!).table.origin[linkAt[k]!]!
-        : -1 - nodes.origin[fromOf(k)]! * 2 ** 26 - nodes.origin[toOf(k)]!,
+        : -(2 ** 32) - nodes.origin[fromOf(k)]! * 2 ** 26 - nodes.origin[toOf(k)]!,
     ends(k) {
       return [name(fromOf(k)), name(toOf(k))];
     },

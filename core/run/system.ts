@@ -98,6 +98,12 @@ export function createNetworkSystem(network: Network, tolerance: number, pressur
     }
   }
 
+  /** No rates where a node has no state: NaN at that node alone, so that it can be named. */
+  function markFailure(out: Float64Array): void {
+    out.fill(0);
+    out.fill(NaN, state.failed * species, (state.failed + 1) * species);
+  }
+
   const system: NetworkSystem = {
     size,
     network,
@@ -115,7 +121,7 @@ export function createNetworkSystem(network: Network, tolerance: number, pressur
 
     rates(t, y, out) {
       if (system.evaluate(t, y, false)) addAll(t, out);
-      else out.fill(NaN);
+      else markFailure(out);
     },
 
     linearise(t, y, rates, timeDerivative) {
@@ -124,7 +130,7 @@ export function createNetworkSystem(network: Network, tolerance: number, pressur
       jacobian.clear();
       if (!system.evaluate(t, y, true)) {
         jacobian.values.fill(NaN);
-        rates.fill(NaN);
+        markFailure(rates);
         return;
       }
       addAll(t, rates);

@@ -104,10 +104,15 @@ function jsonText(rows: readonly Row[], command: CommandTime | null, absent: Pee
   const problems: object[] = rows.map(({ target, ours, peers }) => ({
     problem: target.name,
     ...ours,
-    peers: { ...peers, ...missing },
+    // A peer's own count of memory begins at that of this process, which holds the bundler: it would say nothing of the peer.
+    peers: { ...withoutMemory(peers), ...missing },
   }));
   if (command !== null) problems.push({ problem: TWO_BUBBLES.name, ...command });
   return `${JSON.stringify(problems, null, 2)}\n`;
+}
+
+function withoutMemory(peers: Row['peers']): object {
+  return Object.fromEntries(Object.entries(peers).map(([name, peer]) => [name, { ...peer, peak_rss_mb: undefined }]));
 }
 
 function verdict(rows: readonly Row[]): number {
