@@ -73,6 +73,8 @@ export function createExtrapolation(system: System, until: number): OwnedStepper
     solver.initialStepSize = 1;
     solver.denseOutput = true;
     solver.maxSteps = 40;
+    // Its own check takes the rounding of a state at rest for instability, and halves the step for nothing; ours is stricter.
+    solver.stabilityCheckCount = 0;
     let taken = 0;
     let next = 0;
 

@@ -3,6 +3,8 @@
 export declare class Solver {
   constructor(size: number);
   maxSteps: number;
+  /** In how many lines of the table it checks for instability; 0: in none. */
+  stabilityCheckCount: number;
   /** At least 1e-4, and at most half the interval: the library insists. */
   initialStepSize: number;
   maxExtrapolationColumns: number;

@@ -6,6 +6,7 @@ import { FILM_SIZE } from '../films/film.ts';
 import { BUBBLE } from '../network/network.ts';
 import { faceArea } from '../network/geometry.ts';
 import { WATCHES } from './events/register.ts';
+import { findExcursion } from './locate.ts';
 import type { RunEvent } from './record.ts';
 import type { Looking, Watch, WatchContext } from './watch.ts';
 
@@ -141,8 +142,17 @@ export function createObservation(context: WatchContext): Observation {
           const fb = afterViews[w]![k]!;
           if (halfway) {
             const fm = middleViews[w]![k]!;
-            search(w, k, from, fa, 0.5 * (from + to), fm);
-            search(w, k, 0.5 * (from + to), fm, to, fb);
+            const middle = 0.5 * (from + to);
+            const at = (t: number): number =>
+              inside.lookAtNodes(t, watches[w]!.touches(k)) ? watches[w]!.value(k, t) : NaN;
+            const beyond = findExcursion(at, from, fa, middle, fm, to, fb);
+            if (beyond === null) {
+              search(w, k, from, fa, middle, fm);
+              search(w, k, middle, fm, to, fb);
+            } else {
+              search(w, k, from, fa, beyond.time, beyond.value);
+              search(w, k, beyond.time, beyond.value, to, fb);
+            }
           } else {
             search(w, k, from, fa, to, fb);
           }

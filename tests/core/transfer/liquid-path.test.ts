@@ -93,6 +93,17 @@ describe('a liquid path between two bubbles', () => {
   });
 });
 
+describe('two bubbles that have grown into one another', () => {
+  it('have no liquid between them, and no number comes of it', () => {
+    const path = pairAt(1.5e-3); // radii of 1 and 0.4 mm
+    expect(Number.isFinite(path.flow('l')[0])).toBe(true);
+    // Twice the gas is 1.26 of the radius: 1.26 + 0.4 mm, while 1/R_i + 1/R_j - 2/d would still be positive.
+    path.y[0]! *= 2;
+    expect(path.flow('l')[0]).toBeNaN();
+    expect(path.conductance('l')[0]).toBeNaN();
+  });
+});
+
 const R = 0.5e-3;
 function bubbleOverPool(transient: boolean, ends: readonly [string, string] = ['A', 'W'], saturation = 0.5): Sample {
   return sample({
