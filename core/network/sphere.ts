@@ -28,6 +28,7 @@ export function evaluateSpheres(state: NodeState, ambient: number, y: Float64Arr
     const g = 2 * faces[i]! * tension[i]!;
     const target = c * n;
     let R = size[i]!;
+    if (!(R > 0)) R = Math.cbrt(target / P);
     // Halley: R <- R - 2 F F'/(2 F'^2 - F F''),  F' = R (3 P R + 2 g),  F'' = 6 P R + 2 g.
     let change = 1;
     for (let pass = 0; pass < 60; pass++) {
