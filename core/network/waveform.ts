@@ -128,7 +128,7 @@ function nextPeriodic(t: number, period: number, phase: number, edge: number): n
   return Infinity;
 }
 
-/** The longest step that cannot jump over the shape of the wave: an eighth of a period for a sine; others break at their edges: Infinity. */
+/** The longest step that cannot jump over the wave's shape: an eighth of a sine's period; others break at their edges: Infinity. */
 export function longestStep(wave: Waveform): number {
   return wave.wave === 'sine' ? wave.period / 8 : Infinity;
 }
