@@ -1,9 +1,9 @@
 /**
  * Dying bubbles, carried apart. A free bubble that will be gone within a few steps would make the whole network step at its own
- * pace; it leaves the main system instead and is integrated alone (with those it touches that die too) in s = R^2, which falls
- * nearly linearly in time. Its gas enters the main system as a smooth source, a quadratic in time for each neighbour, and after
- * the step the bubble is integrated again between the neighbours' new pressures: what the two passes differ by is the error of
- * this set, handed to the step control, and is moved at the step's end, so that no gas is lost.
+ * pace; it leaves the main system instead and is integrated alone (with those it touches that die too), see `cluster.ts`. Its gas
+ * enters the main system as a smooth source, a quadratic in time for each neighbour, and after the step the bubble is integrated again
+ * between the neighbours' new states. What the two passes differ by, and what the sources are ahead or behind meanwhile, is the error
+ * of this set, handed to the step control; what is misplaced is put right at the step's end, so that no gas is lost.
  */
 import { waveformValue } from '../network/waveform.ts';
 import type { Companion, ErrorNorm } from '../integrate/owned-stepper.ts';
