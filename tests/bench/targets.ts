@@ -52,7 +52,7 @@ export const TARGETS: readonly Target[] = [
   target('pool', 100000, 4.6e-5, 2.2e-7, 4.6e-7, 45, 0.15), // 5.7e-6, 4.6e-6, 7.5e-6
   target('contacts', 10, 2.2e-6, 2.2e-6, 4.6e-6, 4, 1), // 5.6e-6, 3.8e-6, 7.7e-6
   target('contacts', 20, 1e-4, 2.2e-6, 2.2e-7, 5, 0.5), // 1.1e-6, 8.0e-6, 5.4e-6
-  target('contacts', 30, 1e-5, 4.6e-7, 4.6e-7, 6, 0.4), // 3.6e-6, 1.9e-6, 2.5e-6
+  target('contacts', 30, 3e-5, 4.6e-7, 4.6e-7, 6, 0.4), // 9.8e-7, 1.9e-6, 2.5e-6
   target('cycle', 8, 4.6e-4, 1e-5, 1e-6, 12, 3), // 3.1e-7, 8.4e-7, 9.2e-7
   target('cycle', 32, 1e-3, 1e-5, 4.6e-6, 6, 3), // 5.6e-8, 2.9e-7, 6.4e-7
 ];
