@@ -83,7 +83,7 @@ function verdictWords({ growing, pairs }: CheckReport): string[] {
 }
 
 function names(ids: readonly string[]): string {
-  if (ids.length === 0) return 'none';
+  if (ids.length === 0) return 'no bubble';
   const shown = ids.slice(0, NAMES_SHOWN).join(', ');
   return ids.length > NAMES_SHOWN ? `${shown} and ${ids.length - NAMES_SHOWN} more` : shown;
 }
